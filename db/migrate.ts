@@ -1,6 +1,4 @@
-import { existsSync } from 'node:fs'
-import { dirname, join } from 'node:path'
-import { fileURLToPath } from 'node:url'
+import { join } from 'node:path'
 import type { OpenedDatabase } from './client'
 
 /** Brings the database to the newest schema; a second call finds nothing to do. */
@@ -14,11 +12,7 @@ export async function migrateDatabase({ db, kind }: OpenedDatabase, folder = mig
   await migrate(db as unknown as Parameters<typeof migrate>[0], { migrationsFolder: folder })
 }
 
-/** db/migrations of the checkout, found from the source file or from the bundle in dist/server. */
+/** Every command runs in the checkout's root: the launcher and npm see to it. */
 function migrationsFolder(): string {
-  const here = dirname(fileURLToPath(import.meta.url))
-  const candidates = [join(here, 'migrations'), join(here, '../../db/migrations')]
-  const found = candidates.find((candidate) => existsSync(join(candidate, 'meta/_journal.json')))
-  if (found === undefined) throw new Error('db/migrations was not found')
-  return found
+  return join(process.cwd(), 'db/migrations')
 }
