@@ -57,7 +57,7 @@ export function serve<P extends z.ZodType, Q extends z.ZodType, B extends z.ZodT
   const access = contract.access
   if (access === 'public') throw new Error(`${contract.name} is public: use servePublic`)
   mount(router, contract, async (request, response) => {
-    const claims = await claimsOf(request)
+    const claims = claimsOf(request)
     // Who may not do this is told so before what they typed is judged.
     const repliedWith = await asMember(
       services.db,
