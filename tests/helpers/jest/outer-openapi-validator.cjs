@@ -1,0 +1,1 @@
+module.exports = global.requireOutside('@seriousme/openapi-schema-validator')
