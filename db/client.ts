@@ -19,7 +19,10 @@ export type OpenedDatabase = {
  * Opens PostgreSQL at `url`, or else PGlite in `folder` (made when missing), which only one process may open.
  * @throws FolderInUse when another living process has the folder
  */
-export async function openDatabase(from: { url?: string | undefined; folder: string }): Promise<OpenedDatabase> {
+export async function openDatabase(from: {
+  url?: string | undefined
+  folder: string
+}): Promise<OpenedDatabase> {
   return from.url === undefined ? openFolder(from.folder) : openPostgres(from.url)
 }
 

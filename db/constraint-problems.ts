@@ -36,7 +36,11 @@ export function constraintProblem(error: unknown): ProblemCode | undefined {
 
 /** Name of the constraint (or trigger) that refused; drizzle keeps the driver's error in `cause`. */
 export function constraintName(error: unknown): string | undefined {
-  for (let at = error; typeof at === 'object' && at !== null; at = 'cause' in at ? at.cause : null) {
+  for (
+    let at = error;
+    typeof at === 'object' && at !== null;
+    at = 'cause' in at ? at.cause : null
+  ) {
     if ('constraint' in at && typeof at.constraint === 'string') return at.constraint
   }
   return undefined

@@ -4,7 +4,9 @@ import { join } from 'node:path'
 /** Another living process has the database folder open. */
 export class FolderInUse extends Error {
   constructor(folder: string, pid: number) {
-    super(`The database folder ${folder} is already open in process ${pid}. Stop that process first.`)
+    super(
+      `The database folder ${folder} is already open in process ${pid}. Stop that process first.`,
+    )
     this.name = 'FolderInUse'
   }
 }
@@ -67,7 +69,8 @@ function release(path: string, mine: Holder): void {
 function readHolder(path: string): Holder | undefined {
   try {
     const read: unknown = JSON.parse(readFileSync(path, 'utf8'))
-    if (typeof read !== 'object' || read === null || !('pid' in read) || !('started' in read)) return undefined
+    if (typeof read !== 'object' || read === null || !('pid' in read) || !('started' in read))
+      return undefined
     return { pid: Number(read.pid), started: String(read.started) }
   } catch {
     return undefined

@@ -18,7 +18,10 @@ export async function asMember<T>(
 }
 
 /** One transaction that sees every organisation: sign-in, mail, set-up, checks. Never for a member's request. */
-export async function asService<T>(db: Database, work: (tx: Transaction) => Promise<T>): Promise<T> {
+export async function asService<T>(
+  db: Database,
+  work: (tx: Transaction) => Promise<T>,
+): Promise<T> {
   return db.transaction(async (tx) => {
     await tx.execute(sql`select set_config('role', 'ebbmark_service', true)`)
     return work(tx)

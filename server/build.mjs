@@ -1,6 +1,14 @@
 import { execFileSync, spawn } from 'node:child_process'
 import { createHash } from 'node:crypto'
-import { existsSync, mkdirSync, readdirSync, readFileSync, rmSync, statSync, writeFileSync } from 'node:fs'
+import {
+  existsSync,
+  mkdirSync,
+  readdirSync,
+  readFileSync,
+  rmSync,
+  statSync,
+  writeFileSync,
+} from 'node:fs'
 import { join, resolve } from 'node:path'
 import { promisify } from 'node:util'
 
@@ -12,9 +20,13 @@ const stamps = join(root, 'node_modules/.cache/ebbmark')
 /** Installs what the lock file names, when node_modules is missing or belongs to another lock file. */
 export function installWhenNeeded(say) {
   const lock = digestOf(['package-lock.json'])
-  if (existsSync(join(root, 'node_modules/.package-lock.json')) && readStamp('install') === lock) return
+  if (existsSync(join(root, 'node_modules/.package-lock.json')) && readStamp('install') === lock)
+    return
   say('Installing packages (once, about two minutes) ...')
-  execFileSync('npm', ['ci', '--no-audit', '--no-fund', '--loglevel=error'], { cwd: root, stdio: ['ignore', 'inherit', 'inherit'] })
+  execFileSync('npm', ['ci', '--no-audit', '--no-fund', '--loglevel=error'], {
+    cwd: root,
+    stdio: ['ignore', 'inherit', 'inherit'],
+  })
   writeStamp('install', lock)
 }
 
@@ -46,14 +58,25 @@ export async function buildServerWhenNeeded(say) {
 /** Exports the web app when its sources changed, and compresses what a browser will ask for. */
 export async function buildWebWhenNeeded(say) {
   const sources = digestOf([
-    'app', 'modules', 'shared', 'fonts', 'public', 'app.json', 'babel.config.js', 'metro.config.js', 'package-lock.json',
+    'app',
+    'modules',
+    'shared',
+    'fonts',
+    'public',
+    'app.json',
+    'babel.config.js',
+    'metro.config.js',
+    'package-lock.json',
   ])
   if (existsSync(join(root, 'dist/web/index.html')) && readStamp('web') === sources) return
   say('Building the web app (once, one to two minutes) ...')
   const out = join(root, 'dist/web')
   rmSync(out, { recursive: true, force: true })
   await run('npx', ['expo', 'export', '-p', 'web', '--output-dir', 'dist/web'], {
-    EXPO_NO_TELEMETRY: '1', EXPO_OFFLINE: '1', CI: '1', NODE_ENV: 'production',
+    EXPO_NO_TELEMETRY: '1',
+    EXPO_OFFLINE: '1',
+    CI: '1',
+    NODE_ENV: 'production',
   })
   await compress(out)
   writeStamp('web', sources)
@@ -63,12 +86,17 @@ async function compress(folder) {
   const { brotliCompress, gzip, constants } = await import('node:zlib')
   const brotli = promisify(brotliCompress)
   const zip = promisify(gzip)
-  const texts = filesBelow(folder).filter((file) => /\.(js|css|html|json|svg|webmanifest)$/.test(file))
+  const texts = filesBelow(folder).filter((file) =>
+    /\.(js|css|html|json|svg|webmanifest)$/.test(file),
+  )
   await Promise.all(
     texts.map(async (file) => {
       const bytes = readFileSync(file)
       if (bytes.length < 1024) return
-      const params = { [constants.BROTLI_PARAM_QUALITY]: 10, [constants.BROTLI_PARAM_SIZE_HINT]: bytes.length }
+      const params = {
+        [constants.BROTLI_PARAM_QUALITY]: 10,
+        [constants.BROTLI_PARAM_SIZE_HINT]: bytes.length,
+      }
       writeFileSync(`${file}.br`, await brotli(bytes, { params }))
       writeFileSync(`${file}.gz`, await zip(bytes, { level: 9 }))
     }),
@@ -78,7 +106,11 @@ async function compress(folder) {
 /** Runs a command to its end; its output is shown only when it fails. */
 function run(command, args, env) {
   return new Promise((done, failed) => {
-    const child = spawn(command, args, { cwd: root, env: { ...process.env, ...env }, stdio: ['ignore', 'pipe', 'pipe'] })
+    const child = spawn(command, args, {
+      cwd: root,
+      env: { ...process.env, ...env },
+      stdio: ['ignore', 'pipe', 'pipe'],
+    })
     const output = []
     child.stdout.on('data', (chunk) => output.push(chunk))
     child.stderr.on('data', (chunk) => output.push(chunk))

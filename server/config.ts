@@ -51,7 +51,10 @@ export function readConfig(env: NodeJS.ProcessEnv): Config {
     dataFolder: set.EBBMARK_DATA,
     databaseUrl: set.DATABASE_URL,
     wantsDemo: set.EBBMARK_DEMO === '1',
-    secret: set.EBBMARK_SECRET === undefined ? keptSecret(set.EBBMARK_DATA) : Buffer.from(set.EBBMARK_SECRET),
+    secret:
+      set.EBBMARK_SECRET === undefined
+        ? keptSecret(set.EBBMARK_DATA)
+        : Buffer.from(set.EBBMARK_SECRET),
     smtpUrl: set.SMTP_URL,
     mailFrom: set.MAIL_FROM,
     logLevel: set.LOG_LEVEL,

@@ -8,7 +8,10 @@ const siteIds = sql<string[]>`array(
 )`
 
 /** The person of a living session, with the sites they work at; undefined when either has ended. */
-export async function findActingPerson(tx: Transaction, claims: { personId: string; sessionId: string }) {
+export async function findActingPerson(
+  tx: Transaction,
+  claims: { personId: string; sessionId: string },
+) {
   const [found] = await tx
     .select({
       id: people.id,
@@ -44,7 +47,11 @@ export async function findSignedInPerson(tx: Transaction, personId: string) {
       email: people.email,
       role: people.role,
       siteIds,
-      organisation: { id: organisations.id, name: organisations.name, isDemo: organisations.isDemo },
+      organisation: {
+        id: organisations.id,
+        name: organisations.name,
+        isDemo: organisations.isDemo,
+      },
     })
     .from(people)
     .innerJoin(organisations, eq(organisations.id, people.organisationId))
@@ -104,7 +111,13 @@ export async function countAdministrators(tx: Transaction, except: string): Prom
   const found = await tx
     .select({ id: people.id })
     .from(people)
-    .where(and(eq(people.role, 'administrator' satisfies Role), isNull(people.retiredAt), ne(people.id, except)))
+    .where(
+      and(
+        eq(people.role, 'administrator' satisfies Role),
+        isNull(people.retiredAt),
+        ne(people.id, except),
+      ),
+    )
     .for('update')
   return found.length
 }

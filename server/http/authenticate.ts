@@ -30,15 +30,24 @@ export function readBearer(secret: KeyObject): RequestHandler {
     (token: unknown, done) => {
       const read = payload.safeParse(token)
       if (!read.success) done(null, false)
-      else done(null, { personId: read.data.sub, organisationId: read.data.org, sessionId: read.data.sid })
+      else
+        done(null, {
+          personId: read.data.sub,
+          organisationId: read.data.org,
+          sessionId: read.data.sid,
+        })
     },
   )
   passport.use(strategy)
   const reader: RequestHandler = (request, response, next) => {
-    const check = passport.authenticate('jwt', { session: false }, (error: unknown, claims: Claims | false) => {
-      if (!error && claims) request.claims = claims
-      next(error ?? undefined)
-    }) as RequestHandler
+    const check = passport.authenticate(
+      'jwt',
+      { session: false },
+      (error: unknown, claims: Claims | false) => {
+        if (!error && claims) request.claims = claims
+        next(error ?? undefined)
+      },
+    ) as RequestHandler
     void check(request, response, next)
   }
   return reader

@@ -47,6 +47,11 @@ const statusOf: Record<ProblemCode, number> = {
   'ticket-expired': 403,
 }
 
+/** HTTP status a code is answered with. */
+export function statusOfProblem(code: ProblemCode): number {
+  return statusOf[code]
+}
+
 /** RFC 9457 document of a problem; its words come from the catalogue (problems.json). */
 export function problemDocument(problem: Problem): ProblemDocument {
   const { title, detail } = problemWords(problem.code, problem.facts ?? {})
@@ -89,7 +94,8 @@ export function asProblem(error: unknown): Problem {
     return new Problem('unsupported-media-type')
   }
   const status = typeof error === 'object' && error !== null && 'status' in error ? error.status : 0
-  if (typeof status === 'number' && status >= 400 && status < 500) return new Problem('body-unreadable')
+  if (typeof status === 'number' && status >= 400 && status < 500)
+    return new Problem('body-unreadable')
   return new Problem('internal')
 }
 

@@ -15,7 +15,11 @@ import { fieldsOf } from './problems'
 export type Services = Omit<ActContext, 'person'> & { db: Database }
 
 /** A file instead of JSON: bytes or text, with the name a person saves it under. */
-export type FileReply = { bytes: Uint8Array | string; name: string; disposition: 'inline' | 'attachment' }
+export type FileReply = {
+  bytes: Uint8Array | string
+  name: string
+  disposition: 'inline' | 'attachment'
+}
 
 type ReplyValue<C extends AnyContract> = C['replyType'] extends 'json'
   ? z.input<C['reply']>
@@ -33,13 +37,23 @@ type Input<P extends z.ZodType, Q extends z.ZodType, B extends z.ZodType> = {
   repeated: () => void
 }
 
-export type MemberHandler<P extends z.ZodType, Q extends z.ZodType, B extends z.ZodType, R extends z.ZodType> = (
+export type MemberHandler<
+  P extends z.ZodType,
+  Q extends z.ZodType,
+  B extends z.ZodType,
+  R extends z.ZodType,
+> = (
   tx: Transaction,
   context: ActContext,
   input: Input<P, Q, B>,
 ) => Promise<ReplyValue<Contract<P, Q, B, R>> | FileReply>
 
-export type PublicHandler<P extends z.ZodType, Q extends z.ZodType, B extends z.ZodType, R extends z.ZodType> = (
+export type PublicHandler<
+  P extends z.ZodType,
+  Q extends z.ZodType,
+  B extends z.ZodType,
+  R extends z.ZodType,
+> = (
   services: Services,
   input: Input<P, Q, B>,
 ) => Promise<ReplyValue<Contract<P, Q, B, R>> | FileReply>
@@ -48,7 +62,12 @@ export type PublicHandler<P extends z.ZodType, Q extends z.ZodType, B extends z.
  * Serves a contract to signed-in members: reads and checks the request, opens ONE transaction as that member,
  * checks the policy, runs the act and sends the checked reply.
  */
-export function serve<P extends z.ZodType, Q extends z.ZodType, B extends z.ZodType, R extends z.ZodType>(
+export function serve<
+  P extends z.ZodType,
+  Q extends z.ZodType,
+  B extends z.ZodType,
+  R extends z.ZodType,
+>(
   router: Router,
   services: Services,
   contract: Contract<P, Q, B, R>,
@@ -67,7 +86,12 @@ export function serve<P extends z.ZodType, Q extends z.ZodType, B extends z.ZodT
         if (!can(person, access)) throw problem('not-allowed')
         const context: ActContext = { ...services, person }
         let isRepeated = false
-        const input = { ...readRequest(contract, request), request, response, repeated: () => (isRepeated = true) }
+        const input = {
+          ...readRequest(contract, request),
+          request,
+          response,
+          repeated: () => (isRepeated = true),
+        }
         const reply = await handler(tx, context, input as Input<P, Q, B>)
         return { reply, isRepeated }
       },
@@ -77,7 +101,12 @@ export function serve<P extends z.ZodType, Q extends z.ZodType, B extends z.ZodT
 }
 
 /** Serves a contract to anyone. The handler opens its own transaction, as the service. */
-export function servePublic<P extends z.ZodType, Q extends z.ZodType, B extends z.ZodType, R extends z.ZodType>(
+export function servePublic<
+  P extends z.ZodType,
+  Q extends z.ZodType,
+  B extends z.ZodType,
+  R extends z.ZodType,
+>(
   router: Router,
   services: Services,
   contract: Contract<P, Q, B, R>,
@@ -86,7 +115,12 @@ export function servePublic<P extends z.ZodType, Q extends z.ZodType, B extends 
   if (contract.access !== 'public') throw new Error(`${contract.name} is not public: use serve`)
   mount(router, contract, async (request, response) => {
     let isRepeated = false
-    const input = { ...readRequest(contract, request), request, response, repeated: () => (isRepeated = true) }
+    const input = {
+      ...readRequest(contract, request),
+      request,
+      response,
+      repeated: () => (isRepeated = true),
+    }
     const reply = await handler(services, input as Input<P, Q, B>)
     send(contract, response, reply, isRepeated)
   })
@@ -106,8 +140,14 @@ function readRequest(contract: AnyContract, request: Request) {
     ...(query.success ? [] : fieldsOf(query.error, 'query')),
     ...(body.success ? [] : fieldsOf(body.error)),
   ]
-  if (fields.length > 0 || !query.success || !body.success) throw new Problem('fields-refused', { fields })
-  return { params: params.data, query: query.data, body: body.data, ifMatch: versionIn(contract, request) }
+  if (fields.length > 0 || !query.success || !body.success)
+    throw new Problem('fields-refused', { fields })
+  return {
+    params: params.data,
+    query: query.data,
+    body: body.data,
+    ifMatch: versionIn(contract, request),
+  }
 }
 
 function versionIn(contract: AnyContract, request: Request): string | undefined {
@@ -118,7 +158,12 @@ function versionIn(contract: AnyContract, request: Request): string | undefined 
   return sent
 }
 
-function send(contract: AnyContract, response: Response, reply: unknown, isRepeated: boolean): void {
+function send(
+  contract: AnyContract,
+  response: Response,
+  reply: unknown,
+  isRepeated: boolean,
+): void {
   response.set('Cache-Control', 'no-store')
   if (isFileReply(reply)) {
     response
@@ -135,7 +180,9 @@ function send(contract: AnyContract, response: Response, reply: unknown, isRepea
   // Parsing the reply strips whatever the contract does not name: no database shape leaves the server.
   const checked: unknown = contract.reply.parse(reply)
   if (contract.versioned) response.set('ETag', `"${(checked as { version: string }).version}"`)
-  response.status(isRepeated ? 200 : contract.status).json(checked)
+  // A handler that set another status itself (health: 503) keeps it.
+  if (response.statusCode === 200) response.status(isRepeated ? 200 : contract.status)
+  response.json(checked)
 }
 
 function isFileReply(reply: unknown): reply is FileReply {

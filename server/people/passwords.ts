@@ -10,7 +10,10 @@ export async function hashPassword(password: string): Promise<string> {
 const nobodysHash =
   '$argon2id$v=19$m=19456,t=2,p=1$c29tZXNhbHRzb21lc2FsdA$NRcWhGHq4ioYw9vsdvUVOPHT2lGrHwhdnWYBVL2tUGs'
 
-export async function passwordMatches(password: string, hash: string | undefined): Promise<boolean> {
+export async function passwordMatches(
+  password: string,
+  hash: string | undefined,
+): Promise<boolean> {
   const { verify } = await import('@node-rs/argon2')
   const matches = await verify(hash ?? nobodysHash, password)
   return matches && hash !== undefined

@@ -101,7 +101,8 @@ export function sessionRoutes(services: AppServices): Router {
   })
   serve(router, services, changeMyPassword, async (tx, context, { body, request }) => {
     const [account] = await tx.select().from(people).where(eq(people.id, context.person.id))
-    if (!(await passwordMatches(body.current, account?.passwordHash))) throw problem('sign-in-refused')
+    if (!(await passwordMatches(body.current, account?.passwordHash)))
+      throw problem('sign-in-refused')
     await tx
       .update(people)
       .set({ passwordHash: await hashPassword(body.next) })
@@ -141,6 +142,8 @@ function passwordCheck(services: AppServices) {
           else resolve(account)
         },
       ) as (request: Request, response: Response, next: (error?: unknown) => void) => void
-      check(request, response, (error) => reject(error instanceof Error ? error : new Error(String(error))))
+      check(request, response, (error) =>
+        reject(error instanceof Error ? error : new Error(String(error))),
+      )
     })
 }

@@ -17,12 +17,23 @@ export async function hasOrganisation(tx: Transaction): Promise<boolean> {
 export async function setUpFirstOrganisation(
   tx: Transaction,
   tools: { clock: () => Date; newId: () => string },
-  given: { organisationName: string; phone: string; name: string; email: string; passwordHash: string },
+  given: {
+    organisationName: string
+    phone: string
+    name: string
+    email: string
+    passwordHash: string
+  },
 ) {
   // One arbitrary number, the same in every process: whoever comes second waits, then finds the organisation.
   await tx.execute(sql`select pg_advisory_xact_lock(20250309)`)
   if (await hasOrganisation(tx)) throw problem('already-set-up')
-  return makeOrganisation(tx, tools, { ...given, organisationId: tools.newId(), personId: tools.newId(), isDemo: false })
+  return makeOrganisation(tx, tools, {
+    ...given,
+    organisationId: tools.newId(),
+    personId: tools.newId(),
+    isDemo: false,
+  })
 }
 
 /** The organisation, its administrator and the streams it starts with; no site yet. */

@@ -16,8 +16,17 @@ export function accessToken(
   now: Date,
 ): string {
   const issuedAt = Math.floor(now.getTime() / 1000)
-  const body = { org: claims.organisationId, sid: claims.sessionId, iat: issuedAt, exp: issuedAt + accessSeconds }
-  return jwt.sign(body, secret, { subject: claims.personId, audience: 'ebbmark-api', algorithm: 'HS256' })
+  const body = {
+    org: claims.organisationId,
+    sid: claims.sessionId,
+    iat: issuedAt,
+    exp: issuedAt + accessSeconds,
+  }
+  return jwt.sign(body, secret, {
+    subject: claims.personId,
+    audience: 'ebbmark-api',
+    algorithm: 'HS256',
+  })
 }
 
 /** 256 random bits; only their hash is stored. */

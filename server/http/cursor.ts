@@ -1,0 +1,24 @@
+import { z } from 'zod'
+import { problem } from '../problem'
+
+const keys = z.object({ at: z.string().max(60), id: z.string().max(60) })
+export type Cursor = z.infer<typeof keys>
+
+/** Where a page ended, as an opaque word: the keys of its last row. */
+export function writeCursor(cursor: Cursor): string {
+  return Buffer.from(JSON.stringify(cursor)).toString('base64url')
+}
+
+/** @throws Problem fields-refused for a word that is no cursor */
+export function readCursor(word: string | undefined): Cursor | undefined {
+  if (word === undefined) return undefined
+  try {
+    return keys.parse(JSON.parse(Buffer.from(word, 'base64url').toString()))
+  } catch {
+    throw problem('fields-refused', {
+      fields: [
+        { path: 'query.cursor', code: 'not-a-cursor', detail: 'Ask for the first page again' },
+      ],
+    })
+  }
+}
