@@ -22,3 +22,14 @@ export function readCursor(word: string | undefined): Cursor | undefined {
     })
   }
 }
+
+/** Cuts one row too many off a page and says where the next begins. */
+export function pageOf<Row>(
+  found: Row[],
+  limit: number,
+  keysOf: (row: Row) => Cursor,
+): { rows: Row[]; next: string | null } {
+  const rows = found.slice(0, limit)
+  const last = rows.at(-1)
+  return { rows, next: found.length > limit && last !== undefined ? writeCursor(keysOf(last)) : null }
+}
