@@ -1,0 +1,116 @@
+import { and, eq, isNull, ne } from 'drizzle-orm'
+import type { Transaction } from '@/db/client'
+import { flags, rules } from '@/db/schema/limits'
+import { compare } from '@/shared/quantities/decimals'
+import { ruleDefinition, type RuleDefinition } from '@/shared/rules/definition'
+import { evaluateRule } from '@/shared/rules/evaluate-rule'
+import { ruleFinding, type RuleFinding } from '@/shared/rules/finding'
+import type { ActContext } from '../act-context'
+import { gatherSiteFacts } from './site-facts'
+
+type Context = Pick<ActContext, 'person' | 'newId' | 'clock'>
+type RuleRow = typeof rules.$inferSelect
+type FlagRow = typeof flags.$inferSelect
+
+/**
+ * Measures a site's rules in the transaction that changed what they measure. One crossing makes one flag, not one a
+ * drain (decision 9): while a flag stands its highest figure is kept; once the measure has fallen below the warn line
+ * the crossing is over, and the next one is a flag of its own.
+ */
+export async function evaluateSiteLimits(tx: Transaction, context: Context, siteId: string): Promise<void> {
+  const enabled = await tx
+    .select()
+    .from(rules)
+    .where(and(eq(rules.siteId, siteId), eq(rules.enabled, true), isNull(rules.retiredAt)))
+  if (enabled.length === 0) return
+  const read = enabled.map((row) => ({ row, definition: ruleDefinition.parse(row.definition) }))
+  const facts = await gatherSiteFacts(
+    tx,
+    siteId,
+    context.clock(),
+    read.map(({ definition }) => definition),
+  )
+  const standing = await tx
+    .select()
+    .from(flags)
+    .where(and(eq(flags.siteId, siteId), ne(flags.state, 'withdrawn')))
+  for (const { row, definition } of read) {
+    for (const finding of evaluateRule(definition, facts)) {
+      await keepFlag(tx, context, row, definition, finding, standing)
+    }
+  }
+}
+
+async function keepFlag(
+  tx: Transaction,
+  context: Context,
+  rule: RuleRow,
+  definition: RuleDefinition,
+  finding: RuleFinding,
+  standing: readonly FlagRow[],
+): Promise<void> {
+  // Newest crossing of this rule and period: period keys of later ones end in #2, #3 ...
+  const crossings = standing.filter(
+    (flag) => flag.ruleId === rule.id && flag.periodKey.split('#')[0] === finding.periodKey,
+  )
+  const flag = crossings.sort((a, b) => b.raisedAt.getTime() - a.raisedAt.getTime())[0]
+  const isOver = finding.level === 'below'
+  const current = flag === undefined ? undefined : ruleFinding.parse(flag.finding)
+  const isClosed = flag !== undefined && flag.periodKey.endsWith('.')
+  if (flag === undefined || isClosed) {
+    if (!isOver) await raiseFlag(tx, context, rule, definition, finding, crossings.length)
+    return
+  }
+  if (isOver) {
+    await endCrossing(tx, context, flag)
+    return
+  }
+  const isHigher = current === undefined || compare(finding.measured, current.measured) > 0
+  const isWorse = flag.level === 'warn' && finding.level === 'limit'
+  if (!isHigher && !isWorse) return
+  await tx
+    .update(flags)
+    .set({
+      finding,
+      level: isWorse ? 'limit' : flag.level,
+      // Who reviewed a warning has not reviewed the limit.
+      state: isWorse ? 'open' : flag.state,
+      rule: definition,
+      ruleVersion: rule.version,
+      changedAt: context.clock(),
+    })
+    .where(eq(flags.id, flag.id))
+}
+
+async function raiseFlag(
+  tx: Transaction,
+  context: Context,
+  rule: RuleRow,
+  definition: RuleDefinition,
+  finding: RuleFinding,
+  earlier: number,
+): Promise<void> {
+  if (finding.level === 'below') return
+  await tx.insert(flags).values({
+    id: context.newId(),
+    organisationId: rule.organisationId,
+    siteId: rule.siteId,
+    ruleId: rule.id,
+    ruleVersion: rule.version,
+    periodKey: earlier === 0 ? finding.periodKey : `${finding.periodKey}#${earlier + 1}`,
+    level: finding.level,
+    state: 'open',
+    rule: definition,
+    finding,
+    raisedAt: context.clock(),
+    changedAt: context.clock(),
+  })
+}
+
+/** The measure is below the warn line again: the flag stays for its review, its crossing is over. */
+async function endCrossing(tx: Transaction, context: Context, flag: FlagRow): Promise<void> {
+  await tx
+    .update(flags)
+    .set({ periodKey: `${flag.periodKey}.`, changedAt: context.clock() })
+    .where(eq(flags.id, flag.id))
+}
