@@ -41,7 +41,12 @@ export type DrainInQuestion = {
   litres: string
   unit: string
   occurredAt: string
-  machine: { id: string; code: string; reservoirLitres: string | null; systemLitres: string | null } | null
+  machine: {
+    id: string
+    code: string
+    reservoirLitres: string | null
+    systemLitres: string | null
+  } | null
   legs: { container: ContainerInQuestion; litres: string }[]
 }
 
@@ -59,7 +64,10 @@ export type RecordedDrain = {
 const litresPerGallon = '3.785411784'
 
 /** All questions a drain raises, in the order they are asked. */
-export function questionsOf(drain: DrainInQuestion, recent: readonly RecordedDrain[]): DrainQuestion[] {
+export function questionsOf(
+  drain: DrainInQuestion,
+  recent: readonly RecordedDrain[],
+): DrainQuestion[] {
   return [
     ...drain.legs.flatMap((leg) => containerQuestions(drain, leg)),
     ...unitSlip(drain),
@@ -92,16 +100,34 @@ function containerQuestions(
  */
 function unitSlip(drain: DrainInQuestion): DrainQuestion[] {
   const reservoir = drain.machine?.reservoirLitres
-  if (drain.machine === null || reservoir === null || reservoir === undefined || !isPositive(reservoir)) return []
+  if (
+    drain.machine === null ||
+    reservoir === null ||
+    reservoir === undefined ||
+    !isPositive(reservoir)
+  )
+    return []
   const expected = multiply(reservoir, '0.95')
   const ratio = divide(drain.litres, expected, 6)
   const facts = { machine: drain.machine.code, expectedLitres: expected, typedLitres: drain.litres }
   const isAmerican = drain.unit === 'gal_us'
   if (isAmerican && isWithin(ratio, litresPerGallon)) {
-    return [{ code: 'looks-like-litres', containerId: null, facts: { ...facts, meantLitres: divide(drain.litres, litresPerGallon, 6) } }]
+    return [
+      {
+        code: 'looks-like-litres',
+        containerId: null,
+        facts: { ...facts, meantLitres: divide(drain.litres, litresPerGallon, 6) },
+      },
+    ]
   }
-  if (drain.unit === 'L' && isWithin(ratio, divide('1', litresPerGallon, 6)) ) {
-    return [{ code: 'looks-like-gallons', containerId: null, facts: { ...facts, meantLitres: multiply(drain.litres, litresPerGallon) } }]
+  if (drain.unit === 'L' && isWithin(ratio, divide('1', litresPerGallon, 6))) {
+    return [
+      {
+        code: 'looks-like-gallons',
+        containerId: null,
+        facts: { ...facts, meantLitres: multiply(drain.litres, litresPerGallon) },
+      },
+    ]
   }
   return []
 }
@@ -115,7 +141,9 @@ function isWithin(ratio: string, aim: string): boolean {
 function overMachine(drain: DrainInQuestion): DrainQuestion[] {
   const { machine } = drain
   if (machine === null) return []
-  const holds = machine.systemLitres ?? (machine.reservoirLitres === null ? null : multiply(machine.reservoirLitres, '2'))
+  const holds =
+    machine.systemLitres ??
+    (machine.reservoirLitres === null ? null : multiply(machine.reservoirLitres, '2'))
   if (holds === null || compare(drain.litres, multiply(holds, '1.05')) <= 0) return []
   return [
     {
@@ -138,11 +166,18 @@ function lookAlikes(drain: DrainInQuestion, recent: readonly RecordedDrain[]): D
         other.machineId === (drain.machine?.id ?? null) &&
         other.containerIds.some((id) => poured.has(id)) &&
         Math.abs(Date.parse(other.occurredAt) - Date.parse(drain.occurredAt)) <= twoHours &&
-        compare(absolute(subtract(other.litres, drain.litres)), multiply(other.litres, '0.02')) <= 0,
+        compare(absolute(subtract(other.litres, drain.litres)), multiply(other.litres, '0.02')) <=
+          0,
     )
     .map((other) => ({
       code: 'looks-like-saved' as const,
       containerId: null,
-      facts: { number: other.number, by: other.by, otherLitres: other.litres, otherAt: other.occurredAt, otherId: other.id },
+      facts: {
+        number: other.number,
+        by: other.by,
+        otherLitres: other.litres,
+        otherAt: other.occurredAt,
+        otherId: other.id,
+      },
     }))
 }

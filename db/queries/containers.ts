@@ -94,11 +94,18 @@ export async function listFillings(tx: Transaction, containerIds: readonly strin
     from moves join emptied on emptied.container_id = moves.container_id
     where moves.line_no > coalesce(emptied.line_no, 0)
     group by moves.container_id`)
-  return (result as unknown as { rows: { containerId: string; firstFilledOn: string | null; hasEstimates: boolean | null }[] }).rows
+  return (
+    result as unknown as {
+      rows: { containerId: string; firstFilledOn: string | null; hasEstimates: boolean | null }[]
+    }
+  ).rows
 }
 
 /** Containers that stand on an open plan or manifest. */
-export async function listOpenPickupsOfContainers(tx: Transaction, containerIds: readonly string[]) {
+export async function listOpenPickupsOfContainers(
+  tx: Transaction,
+  containerIds: readonly string[],
+) {
   if (containerIds.length === 0) return []
   return tx
     .select({ containerId: pickupLines.containerId, id: pickups.id, number: pickups.number })
@@ -129,7 +136,9 @@ export async function listContainerLines(tx: Transaction, containerId: string, l
       isReversed: sql<boolean>`exists (select 1 from ${movements} mirror where mirror.reverses = ${movements.id})`,
       otherKind: other.kind,
       otherPlace: other.place,
-      otherCode: sql<string | null>`coalesce(${otherContainer.code}, ${machines.code}, ${parties.name})`,
+      otherCode: sql<
+        string | null
+      >`coalesce(${otherContainer.code}, ${machines.code}, ${parties.name})`,
       streamName: streams.name,
       drainNumber: drains.number,
       pickupNumber: pickups.number,
@@ -137,7 +146,10 @@ export async function listContainerLines(tx: Transaction, containerId: string, l
         else -${movements.litres} end) over (order by ${movements.lineNo})`,
     })
     .from(own)
-    .innerJoin(movements, sql`${movements.fromAccountId} = ${own.id} or ${movements.toAccountId} = ${own.id}`)
+    .innerJoin(
+      movements,
+      sql`${movements.fromAccountId} = ${own.id} or ${movements.toAccountId} = ${own.id}`,
+    )
     .innerJoin(
       other,
       sql`${other.id} = case when ${movements.toAccountId} = ${own.id} then ${movements.fromAccountId} else ${movements.toAccountId} end`,

@@ -1,4 +1,18 @@
-import { and, asc, desc, eq, gte, inArray, isNull, lt, lte, ne, or, sql, type SQL } from 'drizzle-orm'
+import {
+  and,
+  asc,
+  desc,
+  eq,
+  gte,
+  inArray,
+  isNull,
+  lt,
+  lte,
+  ne,
+  or,
+  sql,
+  type SQL,
+} from 'drizzle-orm'
 import type { Transaction } from '../client'
 import { accounts, balances, movements, numberSeries } from '../schema/book'
 import { drainRevisions, drains, marks } from '../schema/drains'
@@ -69,7 +83,9 @@ export async function listBins(tx: Transaction, siteId: string) {
   return tx
     .select({ id: containers.id, code: containers.code, streamId: containers.streamId })
     .from(containers)
-    .where(and(eq(containers.siteId, siteId), eq(containers.type, 'bin'), isNull(containers.retiredAt)))
+    .where(
+      and(eq(containers.siteId, siteId), eq(containers.type, 'bin'), isNull(containers.retiredAt)),
+    )
     .orderBy(asc(containers.code))
 }
 
@@ -93,7 +109,13 @@ export async function listRevisions(tx: Transaction, drainIds: readonly string[]
 }
 
 /** Standing drains of a machine around an instant, with the containers they were poured into. */
-export async function listDrainsAround(tx: Transaction, machineId: string, from: Date, to: Date, except: string) {
+export async function listDrainsAround(
+  tx: Transaction,
+  machineId: string,
+  from: Date,
+  to: Date,
+  except: string,
+) {
   return tx
     .select({
       id: drains.id,
@@ -151,7 +173,9 @@ function drainsWithNames(tx: Transaction) {
     .select({
       drain: drains,
       machineCode: machines.code,
-      machineName: sql<string | null>`nullif(trim(${machines.make} || ' ' || ${machines.model}), '')`,
+      machineName: sql<
+        string | null
+      >`nullif(trim(${machines.make} || ' ' || ${machines.model}), '')`,
       machineKind: machines.kind,
       stream: { id: streams.id, code: streams.code, name: streams.name },
       timeZone: sites.timeZone,
@@ -169,7 +193,8 @@ function drainsWithNames(tx: Transaction) {
 
 function conditions(filter: DrainFilter): (SQL | undefined)[] {
   const { before, state, search } = filter
-  const word = search === undefined || search === '' ? undefined : `%${search.replace(/[\\%_]/g, '\\$&')}%`
+  const word =
+    search === undefined || search === '' ? undefined : `%${search.replace(/[\\%_]/g, '\\$&')}%`
   return [
     ofSites(drains.siteId, filter.siteIds),
     filter.machineId === undefined ? undefined : eq(drains.machineId, filter.machineId),
@@ -209,7 +234,9 @@ export async function listMarkRecords(
     limit?: number
   },
 ) {
-  const reviewer = sql<string | null>`(select ${people.name} from ${people} where ${people.id} = ${marks.reviewedBy})`
+  const reviewer = sql<
+    string | null
+  >`(select ${people.name} from ${people} where ${people.id} = ${marks.reviewedBy})`
   return tx
     .select({ mark: marks, drainNumber: drains.number, containerCode: containers.code, reviewer })
     .from(marks)
@@ -228,7 +255,10 @@ export async function listMarkRecords(
             : sql`${marks.reviewedAt} is not null`,
         of.before === undefined
           ? undefined
-          : or(lt(marks.raisedAt, of.before.at), and(eq(marks.raisedAt, of.before.at), lt(marks.id, of.before.id))),
+          : or(
+              lt(marks.raisedAt, of.before.at),
+              and(eq(marks.raisedAt, of.before.at), lt(marks.id, of.before.id)),
+            ),
       ),
     )
     .orderBy(desc(marks.raisedAt), desc(marks.id))

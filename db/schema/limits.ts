@@ -58,6 +58,8 @@ export const flags = pgTable(
     finding: jsonb('finding').notNull(),
     raisedAt: instant('raised_at').notNull(),
     changedAt: instant('changed_at').notNull(),
+    /** When the measure fell below the warn line again: the crossing is over, its review may still wait. */
+    endedAt: instant('ended_at'),
     reviewedAt: instant('reviewed_at'),
     reviewedBy: uuid('reviewed_by'),
     reviewNote: text('review_note'),

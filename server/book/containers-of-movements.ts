@@ -4,7 +4,10 @@ import type { MovementRow } from '@/db/queries/book'
 import { accounts } from '@/db/schema/book'
 
 /** Ids of the containers that lines touch, on either side. */
-export async function containersOfMovements(tx: Transaction, rows: readonly MovementRow[]): Promise<string[]> {
+export async function containersOfMovements(
+  tx: Transaction,
+  rows: readonly MovementRow[],
+): Promise<string[]> {
   const ids = [...new Set(rows.flatMap((row) => [row.fromAccountId, row.toAccountId]))]
   if (ids.length === 0) return []
   const found = await tx

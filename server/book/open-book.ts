@@ -9,12 +9,10 @@ export async function openBook(
   context: Pick<ActContext, 'person'>,
   siteId: string,
 ): Promise<void> {
-  await tx
-    .insert(books)
-    .values({
-      siteId,
-      organisationId: context.person.organisationId,
-      lastLineNo: 0,
-      lastHash: firstHash,
-    })
+  await tx.insert(books).values({
+    siteId,
+    organisationId: context.person.organisationId,
+    lastLineNo: 0,
+    lastHash: firstHash,
+  })
 }

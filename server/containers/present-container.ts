@@ -10,7 +10,14 @@ import {
 import { listMarkRecords } from '@/db/queries/drains'
 import { daysBetween, localDay } from '@/shared/calendar'
 import type { container, containerDetail, containerLine, hold } from '@/shared/contracts/containers'
-import { compare, isNegative, multiply, negate, normalise, subtract } from '@/shared/quantities/decimals'
+import {
+  compare,
+  isNegative,
+  multiply,
+  negate,
+  normalise,
+  subtract,
+} from '@/shared/quantities/decimals'
 import { isUnit } from '@/shared/quantities/units'
 import { presentMark } from '../drains/present-drain'
 import { problem } from '../problem'
@@ -20,10 +27,16 @@ type Found = Awaited<ReturnType<typeof listContainersWithContents>>[number]
 type Shown = z.input<typeof container>
 
 /** Containers with contents, age and level: five queries for any number of them. */
-export async function presentContainers(tx: Transaction, found: Found[], now: Date): Promise<Shown[]> {
+export async function presentContainers(
+  tx: Transaction,
+  found: Found[],
+  now: Date,
+): Promise<Shown[]> {
   const ids = found.map((row) => row.container.id)
   const fillings = new Map((await listFillings(tx, ids)).map((row) => [row.containerId, row]))
-  const onPickups = new Map((await listOpenPickupsOfContainers(tx, ids)).map((row) => [row.containerId, row]))
+  const onPickups = new Map(
+    (await listOpenPickupsOfContainers(tx, ids)).map((row) => [row.containerId, row]),
+  )
   return found.map((row) => {
     const filling = fillings.get(row.container.id)
     const onPickup = onPickups.get(row.container.id)
@@ -32,7 +45,13 @@ export async function presentContainers(tx: Transaction, found: Found[], now: Da
     return {
       ...presentContainerRecord(row.container),
       siteCode: row.siteCode,
-      stream: { id: stream.id, code: stream.code, name: stream.name, kind: stream.kind, labelWords: stream.labelWords },
+      stream: {
+        id: stream.id,
+        code: stream.code,
+        name: stream.name,
+        kind: stream.kind,
+        labelWords: stream.labelWords,
+      },
       litres: normalise(row.litres),
       kilograms: normalise(row.kilograms),
       pieces: row.pieces,
@@ -43,7 +62,8 @@ export async function presentContainers(tx: Transaction, found: Found[], now: Da
           ? null
           : presentHold({ hold: row.hold, heldByName: row.heldByName ?? '', releasedByName: null }),
       firstFilledOn,
-      ageDays: firstFilledOn === null ? null : daysBetween(firstFilledOn, localDay(now, row.timeZone)),
+      ageDays:
+        firstFilledOn === null ? null : daysBetween(firstFilledOn, localDay(now, row.timeZone)),
       hasEstimates: filling?.hasEstimates ?? false,
       openMarks: row.openMarks,
       onPickup: onPickup === undefined ? null : { id: onPickup.id, number: onPickup.number },
@@ -95,13 +115,17 @@ function presentHold(row: {
     heldBy: { id: one.heldBy, name: row.heldByName },
     heldAt: one.heldAt.toISOString(),
     releasedBy:
-      one.releasedBy === null || row.releasedByName === null ? null : { id: one.releasedBy, name: row.releasedByName },
+      one.releasedBy === null || row.releasedByName === null
+        ? null
+        : { id: one.releasedBy, name: row.releasedByName },
     releasedAt: one.releasedAt?.toISOString() ?? null,
     releaseNote: one.releaseNote,
   }
 }
 
-function presentLine(row: Awaited<ReturnType<typeof listContainerLines>>[number]): z.input<typeof containerLine> {
+function presentLine(
+  row: Awaited<ReturnType<typeof listContainerLines>>[number],
+): z.input<typeof containerLine> {
   const { movement } = row
   const signed = (value: string) => normalise(row.isIn ? value : negate(value))
   return {
@@ -115,10 +139,15 @@ function presentLine(row: Awaited<ReturnType<typeof listContainerLines>>[number]
     litres: signed(movement.litres),
     kilograms: signed(movement.kilograms),
     pieces: row.isIn ? movement.pieces : -movement.pieces,
-    entered: isUnit(movement.enteredUnit) ? { value: movement.enteredValue, unit: movement.enteredUnit } : null,
+    entered: isUnit(movement.enteredUnit)
+      ? { value: movement.enteredValue, unit: movement.enteredUnit }
+      : null,
     other: row.otherCode ?? row.otherPlace ?? row.otherKind,
     stream: row.streamName,
-    drain: movement.drainId === null || row.drainNumber === null ? null : { id: movement.drainId, number: row.drainNumber },
+    drain:
+      movement.drainId === null || row.drainNumber === null
+        ? null
+        : { id: movement.drainId, number: row.drainNumber },
     pickup: movement.pickupId === null ? null : { id: movement.pickupId, number: row.pickupNumber },
     litresAfter: normalise(row.litresAfter),
   }

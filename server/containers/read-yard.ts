@@ -33,7 +33,9 @@ export async function readYardOf(
   const [todays] = await tx
     .select({ drains: count(), litres: sql<string>`coalesce(sum(${drains.litres}), 0)::text` })
     .from(drains)
-    .where(and(eq(drains.siteId, siteId), eq(drains.occurredOn, today), eq(drains.state, 'standing')))
+    .where(
+      and(eq(drains.siteId, siteId), eq(drains.occurredOn, today), eq(drains.state, 'standing')),
+    )
   const [open] = await tx
     .select({ flags: count() })
     .from(flags)
@@ -48,7 +50,9 @@ export async function readYardOf(
   return {
     today,
     containers: await presentContainers(tx, found, now),
-    marks: (await listMarkRecords(tx, { siteIds: [siteId], isOpen: true, limit: 20 })).map(presentMark),
+    marks: (await listMarkRecords(tx, { siteIds: [siteId], isOpen: true, limit: 20 })).map(
+      presentMark,
+    ),
     openFlags: open?.flags ?? 0,
     latestDrains: await presentDrainRows(tx, latest),
     drainsToday: todays?.drains ?? 0,
@@ -70,7 +74,11 @@ export async function readYardOf(
 }
 
 /** The three machines this person drained last at the site. */
-async function lastMachinesOf(tx: Transaction, context: ActContext, siteId: string): Promise<string[]> {
+async function lastMachinesOf(
+  tx: Transaction,
+  context: ActContext,
+  siteId: string,
+): Promise<string[]> {
   const rows = await tx
     .select({ machineId: drains.machineId })
     .from(drains)

@@ -31,14 +31,20 @@ export async function recordTransfer(
   const hash = contentHash(body)
   const [before] = await tx.select().from(transfers).where(eq(transfers.id, body.id)).limit(1)
   if (before !== undefined) {
-    if (before.contentHash !== hash || before.recordedBy !== context.person.id) throw problem('id-reused')
+    if (before.contentHash !== hash || before.recordedBy !== context.person.id)
+      throw problem('id-reused')
     return { isRepeated: true, recordedAt: before.recordedAt }
   }
   demand(context, 'record-transfer', { siteId: body.siteId })
   const site = await getSite(tx, context, body.siteId)
   const occurredAt = new Date(body.occurredAt)
   if (occurredAt.getTime() > context.clock().getTime() + futureAllowance) {
-    throw fieldProblem('time-in-future', 'occurredAt', 'in-future', 'The time must be now or in the past')
+    throw fieldProblem(
+      'time-in-future',
+      'occurredAt',
+      'in-future',
+      'The time must be now or in the past',
+    )
   }
   if (body.fromContainerId === body.toContainerId) {
     throw fieldProblem('same-container', 'toContainerId', 'same', 'Choose another container')
@@ -46,12 +52,17 @@ export async function recordTransfer(
   const found = await listContainersOfLegs(tx, [body.fromContainerId, body.toContainerId])
   const at = (id: string, field: string) => {
     const one = found.find(({ container }) => container.id === id)
-    if (one === undefined) throw fieldProblem('fields-refused', field, 'unknown', 'There is no such container')
+    if (one === undefined)
+      throw fieldProblem('fields-refused', field, 'unknown', 'There is no such container')
     if (one.container.siteId !== site.id) {
-      throw fieldProblem('wrong-site', field, 'wrong-site', 'That belongs to another site', { name: one.container.code })
+      throw fieldProblem('wrong-site', field, 'wrong-site', 'That belongs to another site', {
+        name: one.container.code,
+      })
     }
     if (one.hold !== null) {
-      throw problem('container-held', { facts: { container: one.container.code, reason: one.hold.reason } })
+      throw problem('container-held', {
+        facts: { container: one.container.code, reason: one.hold.reason },
+      })
     }
     return one.container
   }
@@ -70,7 +81,10 @@ export async function recordTransfer(
   await postMovements(tx, context, site.id, [
     {
       streamId: from.streamId,
-      fromAccountId: await accountOf(tx, context, site.id, { kind: 'container', containerId: from.id }),
+      fromAccountId: await accountOf(tx, context, site.id, {
+        kind: 'container',
+        containerId: from.id,
+      }),
       toAccountId: await accountOf(tx, context, site.id, { kind: 'container', containerId: to.id }),
       litres: toLitres(body.volume.value, body.volume.unit),
       kilograms: '0',

@@ -14,7 +14,9 @@ import { recordTransfer } from './record-transfer'
 export function containerRoutes(services: AppServices): Router {
   const router = Router()
 
-  serve(router, services, contracts.readYard, (tx, context, { query }) => readYardOf(tx, context, query.siteId))
+  serve(router, services, contracts.readYard, (tx, context, { query }) =>
+    readYardOf(tx, context, query.siteId),
+  )
 
   serve(router, services, contracts.listContainers, async (tx, context, { query }) => {
     const found = await listContainersWithContents(tx, {
@@ -44,7 +46,10 @@ export function containerRoutes(services: AppServices): Router {
     const { isRepeated, recordedAt } = await recordTransfer(tx, context, body)
     if (isRepeated) repeated()
     const found = await listContainersOfLegs(tx, [body.fromContainerId, body.toContainerId])
-    const coded = (id: string) => ({ id, code: found.find(({ container }) => container.id === id)?.container.code ?? '' })
+    const coded = (id: string) => ({
+      id,
+      code: found.find(({ container }) => container.id === id)?.container.code ?? '',
+    })
     return {
       id: body.id,
       siteId: body.siteId,

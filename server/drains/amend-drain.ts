@@ -39,7 +39,13 @@ export async function amendDrain(
   const [taken] = await tx
     .update(drains)
     .set({ revision })
-    .where(and(eq(drains.id, id), eq(drains.revision, body.expectedRevision), eq(drains.state, 'standing')))
+    .where(
+      and(
+        eq(drains.id, id),
+        eq(drains.revision, body.expectedRevision),
+        eq(drains.state, 'standing'),
+      ),
+    )
     .returning({ id: drains.id })
   if (taken === undefined) throw problem('changed-under-you')
 
@@ -65,14 +71,23 @@ export async function amendDrain(
   await postDrain(tx, context, { id, revision }, resolved)
   await closeDrainMarks(tx, context, id, `Amended to revision ${revision}`)
   await raiseDrainMarks(tx, context, { id, siteId: site.id }, questions, body.answers)
-  const touched = [...(await containersOfMovements(tx, old)), ...body.legs.map(({ containerId }) => containerId)]
+  const touched = [
+    ...(await containersOfMovements(tx, old)),
+    ...body.legs.map(({ containerId }) => containerId),
+  ]
   await markBelowZero(tx, context, site.id, touched)
   await writeAudit(tx, context, {
     act: 'amend-drain',
     subjectKind: 'drain',
     subjectId: id,
     siteId: site.id,
-    details: { number: before.number, revision, reason: body.reason, was: `${before.enteredValue} ${before.enteredUnit}`, is: `${facts.volume.value} ${facts.volume.unit}` },
+    details: {
+      number: before.number,
+      revision,
+      reason: body.reason,
+      was: `${before.enteredValue} ${before.enteredUnit}`,
+      is: `${facts.volume.value} ${facts.volume.unit}`,
+    },
   })
   await evaluateSiteLimits(tx, context, site.id)
 }

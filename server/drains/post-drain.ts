@@ -31,7 +31,9 @@ export async function postDrain(
       tx,
       context,
       site.id,
-      containerId === undefined ? { kind: 'outside', place: 'floor' } : { kind: 'container', containerId },
+      containerId === undefined
+        ? { kind: 'outside', place: 'floor' }
+        : { kind: 'container', containerId },
     )
   const shared = {
     fromAccountId: from,
@@ -49,14 +51,22 @@ export async function postDrain(
       streamId: stream.id,
       toAccountId: await into(leg.containerId),
       litres: leg.litres,
-      enteredValue: leg.volume?.value ?? (resolved.legs.length === 1 ? facts.volume.value : leg.litres),
+      enteredValue:
+        leg.volume?.value ?? (resolved.legs.length === 1 ? facts.volume.value : leg.litres),
       enteredUnit: leg.volume?.unit ?? (resolved.legs.length === 1 ? facts.volume.unit : 'L'),
       method: facts.method,
       spreadPercent: spreadOfFacts(facts),
       isEstimate: isEstimate(facts.method),
     })
   }
-  const count = { ...shared, ...fluid, method: 'count', spreadPercent: null, isEstimate: false, enteredUnit: 'pieces' }
+  const count = {
+    ...shared,
+    ...fluid,
+    method: 'count',
+    spreadPercent: null,
+    isEstimate: false,
+    enteredUnit: 'pieces',
+  }
   if (resolved.filterStream !== undefined) {
     for (const filters of resolved.filters) {
       const toAccountId = await into(filters.container?.id)

@@ -1,6 +1,11 @@
 import type { z } from 'zod'
 import type { Transaction } from '@/db/client'
-import { findDrainWithNames, listMarkRecords, listRevisions, type listDrainRecords } from '@/db/queries/drains'
+import {
+  findDrainWithNames,
+  listMarkRecords,
+  listRevisions,
+  type listDrainRecords,
+} from '@/db/queries/drains'
 import { inArray } from 'drizzle-orm'
 import { containers, fluids } from '@/db/schema/sites'
 import { drainFacts, type drain, type drainRow, type DrainFacts } from '@/shared/contracts/drains'
@@ -17,7 +22,10 @@ type DrainWithNames = Awaited<ReturnType<typeof listDrainRecords>>[number]
 type Revision = Awaited<ReturnType<typeof listRevisions>>[number]
 
 /** Rows of the list; the revisions of all of them are read at once. */
-export async function presentDrainRows(tx: Transaction, found: DrainWithNames[]): Promise<z.input<typeof drainRow>[]> {
+export async function presentDrainRows(
+  tx: Transaction,
+  found: DrainWithNames[],
+): Promise<z.input<typeof drainRow>[]> {
   const revisions = await listRevisions(
     tx,
     found.map(({ drain }) => drain.id),
@@ -38,7 +46,8 @@ export async function presentDrain(tx: Transaction, id: string): Promise<z.input
   const codes = await containerCodes(tx, revisions.map(factsOf))
   const row = presentRow(found, newest, codes)
   const fluidIds = [facts.fluidId, facts.refill?.fluidId].filter((one) => one !== undefined)
-  const names = fluidIds.length === 0 ? [] : await tx.select().from(fluids).where(inArray(fluids.id, fluidIds))
+  const names =
+    fluidIds.length === 0 ? [] : await tx.select().from(fluids).where(inArray(fluids.id, fluidIds))
   const fluidOf = (fluidId: string | undefined) => {
     const one = names.find((name) => name.id === fluidId)
     return one === undefined ? null : { id: one.id, name: one.name }
@@ -51,13 +60,22 @@ export async function presentDrain(tx: Transaction, id: string): Promise<z.input
     ...row,
     fluid: fluidOf(facts.fluidId),
     spreadPercent: spreadOfFacts(facts),
-    filters: facts.filters.map((filters) => ({ ...filters, containerCode: codes.get(filters.containerId ?? '') ?? null })),
+    filters: facts.filters.map((filters) => ({
+      ...filters,
+      containerCode: codes.get(filters.containerId ?? '') ?? null,
+    })),
     absorbents:
       facts.absorbents === undefined
         ? null
-        : { mass: facts.absorbents.mass, containerCode: codes.get(facts.absorbents.containerId ?? '') ?? null },
+        : {
+            mass: facts.absorbents.mass,
+            containerCode: codes.get(facts.absorbents.containerId ?? '') ?? null,
+          },
     breatherCaps: facts.breatherCaps,
-    refill: facts.refill === undefined ? null : { volume: facts.refill.volume, fluid: fluidOf(facts.refill.fluidId) },
+    refill:
+      facts.refill === undefined
+        ? null
+        : { volume: facts.refill.volume, fluid: fluidOf(facts.refill.fluidId) },
     note: facts.note,
     revisions: revisions.map(({ revision, by }) => ({
       revision: revision.revision,
@@ -79,7 +97,9 @@ export async function presentDrain(tx: Transaction, id: string): Promise<z.input
   }
 }
 
-export function presentMark(found: Awaited<ReturnType<typeof listMarkRecords>>[number]): z.input<typeof mark> {
+export function presentMark(
+  found: Awaited<ReturnType<typeof listMarkRecords>>[number],
+): z.input<typeof mark> {
   const { mark: row, drainNumber, containerCode, reviewer } = found
   return {
     ...row,
@@ -105,7 +125,8 @@ function presentRow(
     machine: {
       id: row.machineId,
       code: found.machineCode,
-      description: row.machineText || [found.machineName, found.machineKind].filter(Boolean).join(', '),
+      description:
+        row.machineText || [found.machineName, found.machineKind].filter(Boolean).join(', '),
     },
     stream: found.stream,
     occurredAt: row.occurredAt.toISOString(),
@@ -116,7 +137,8 @@ function presentRow(
     method: row.method as MeasuringMethod,
     isEstimate: row.isEstimate,
     legs: facts === undefined ? [] : legsOf(facts, row.litres, codes),
-    filterCount: facts === undefined ? 0 : facts.filters.reduce((total, { count }) => total + count, 0),
+    filterCount:
+      facts === undefined ? 0 : facts.filters.reduce((total, { count }) => total + count, 0),
     state: row.state,
     revision: row.revision,
     needsLook: found.needsLook,
@@ -126,7 +148,9 @@ function presentRow(
 }
 
 function legsOf(facts: DrainFacts, litres: string, codes: Map<string, string>) {
-  const given = facts.legs.map((leg) => (leg.volume === undefined ? undefined : toLitres(leg.volume.value, leg.volume.unit)))
+  const given = facts.legs.map((leg) =>
+    leg.volume === undefined ? undefined : toLitres(leg.volume.value, leg.volume.unit),
+  )
   const remainder = subtract(litres, sum(given.filter((part) => part !== undefined)))
   return facts.legs.map((leg, index) => ({
     containerId: leg.containerId,

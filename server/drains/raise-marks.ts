@@ -41,7 +41,9 @@ export async function markBelowZero(
       code: containers.code,
       litres: sql<string>`min(${balances.litres})::text`,
       isBelow: sql<boolean>`bool_or(${balances.litres} < 0 or ${balances.kilograms} < 0 or ${balances.pieces} < 0)`,
-      markId: sql<string | null>`(select ${marks.id} from ${marks} where ${marks.containerId} = ${containers.id}
+      markId: sql<
+        string | null
+      >`(select ${marks.id} from ${marks} where ${marks.containerId} = ${containers.id}
         and ${marks.code} = 'balance-below-zero' and ${marks.reviewedAt} is null limit 1)`,
     })
     .from(containers)
@@ -61,7 +63,9 @@ export async function markBelowZero(
       details: { container: code, bookLitres: litres },
     })),
   )
-  const mended = found.flatMap(({ isBelow, markId }) => (!isBelow && markId !== null ? [markId] : []))
+  const mended = found.flatMap(({ isBelow, markId }) =>
+    !isBelow && markId !== null ? [markId] : [],
+  )
   await closeMarks(tx, context, mended, 'The book is above zero again')
 }
 
@@ -84,7 +88,12 @@ export async function closeDrainMarks(
   )
 }
 
-async function closeMarks(tx: Transaction, context: ActContext, ids: string[], note: string): Promise<void> {
+async function closeMarks(
+  tx: Transaction,
+  context: ActContext,
+  ids: string[],
+  note: string,
+): Promise<void> {
   if (ids.length === 0) return
   await tx
     .update(marks)

@@ -30,7 +30,8 @@ export async function recordDrain(
   const hash = contentHash(body)
   const before = await findDrain(tx, { id: body.id })
   if (before !== undefined) {
-    if (before.contentHash !== hash || before.recordedBy !== context.person.id) throw problem('id-reused')
+    if (before.contentHash !== hash || before.recordedBy !== context.person.id)
+      throw problem('id-reused')
     return { id: before.id, isRepeated: true }
   }
   demand(context, 'record-drain', { siteId: body.siteId })
@@ -87,7 +88,10 @@ export async function recordDrain(
 }
 
 /** The columns of a drain that its newest revision decides. */
-export function drainColumns(resolved: Awaited<ReturnType<typeof resolveDrain>>, occurredOn: string) {
+export function drainColumns(
+  resolved: Awaited<ReturnType<typeof resolveDrain>>,
+  occurredOn: string,
+) {
   const { facts } = resolved
   return {
     machineId: resolved.machine?.id ?? null,

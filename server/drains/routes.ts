@@ -28,7 +28,10 @@ export function drainRoutes(services: AppServices): Router {
       before: cursor && { at: new Date(cursor.at), id: cursor.id },
       limit: query.limit + 1,
     })
-    const { rows, next } = pageOf(found, query.limit, ({ drain }) => ({ at: drain.occurredAt.toISOString(), id: drain.id }))
+    const { rows, next } = pageOf(found, query.limit, ({ drain }) => ({
+      at: drain.occurredAt.toISOString(),
+      id: drain.id,
+    }))
     return { rows: await presentDrainRows(tx, rows), next }
   })
 
@@ -72,7 +75,10 @@ export function drainRoutes(services: AppServices): Router {
       before: cursor && { at: new Date(cursor.at), id: cursor.id },
       limit: query.limit + 1,
     })
-    const { rows, next } = pageOf(found, query.limit, ({ mark }) => ({ at: mark.raisedAt.toISOString(), id: mark.id }))
+    const { rows, next } = pageOf(found, query.limit, ({ mark }) => ({
+      at: mark.raisedAt.toISOString(),
+      id: mark.id,
+    }))
     return { rows: rows.map(presentMark), next }
   })
 

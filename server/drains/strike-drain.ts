@@ -29,7 +29,13 @@ export async function strikeDrain(
   const [taken] = await tx
     .update(drains)
     .set({ revision, state: 'struck' })
-    .where(and(eq(drains.id, id), eq(drains.revision, body.expectedRevision), eq(drains.state, 'standing')))
+    .where(
+      and(
+        eq(drains.id, id),
+        eq(drains.revision, body.expectedRevision),
+        eq(drains.state, 'standing'),
+      ),
+    )
     .returning({ id: drains.id })
   if (taken === undefined) throw problem('changed-under-you')
   const old = await listStandingMovements(tx, { drainId: id })

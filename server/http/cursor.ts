@@ -31,5 +31,8 @@ export function pageOf<Row>(
 ): { rows: Row[]; next: string | null } {
   const rows = found.slice(0, limit)
   const last = rows.at(-1)
-  return { rows, next: found.length > limit && last !== undefined ? writeCursor(keysOf(last)) : null }
+  return {
+    rows,
+    next: found.length > limit && last !== undefined ? writeCursor(keysOf(last)) : null,
+  }
 }

@@ -1,4 +1,4 @@
-import { and, eq, isNull, ne } from 'drizzle-orm'
+import { and, eq, isNull } from 'drizzle-orm'
 import type { Transaction } from '@/db/client'
 import { flags, rules } from '@/db/schema/limits'
 import { compare } from '@/shared/quantities/decimals'
@@ -17,7 +17,11 @@ type FlagRow = typeof flags.$inferSelect
  * drain (decision 9): while a flag stands its highest figure is kept; once the measure has fallen below the warn line
  * the crossing is over, and the next one is a flag of its own.
  */
-export async function evaluateSiteLimits(tx: Transaction, context: Context, siteId: string): Promise<void> {
+export async function evaluateSiteLimits(
+  tx: Transaction,
+  context: Context,
+  siteId: string,
+): Promise<void> {
   const enabled = await tx
     .select()
     .from(rules)
@@ -33,7 +37,7 @@ export async function evaluateSiteLimits(tx: Transaction, context: Context, site
   const standing = await tx
     .select()
     .from(flags)
-    .where(and(eq(flags.siteId, siteId), ne(flags.state, 'withdrawn')))
+    .where(and(eq(flags.siteId, siteId), isNull(flags.endedAt)))
   for (const { row, definition } of read) {
     for (const finding of evaluateRule(definition, facts)) {
       await keepFlag(tx, context, row, definition, finding, standing)
@@ -49,23 +53,17 @@ async function keepFlag(
   finding: RuleFinding,
   standing: readonly FlagRow[],
 ): Promise<void> {
-  // Newest crossing of this rule and period: period keys of later ones end in #2, #3 ...
-  const crossings = standing.filter(
-    (flag) => flag.ruleId === rule.id && flag.periodKey.split('#')[0] === finding.periodKey,
-  )
-  const flag = crossings.sort((a, b) => b.raisedAt.getTime() - a.raisedAt.getTime())[0]
-  const isOver = finding.level === 'below'
-  const current = flag === undefined ? undefined : ruleFinding.parse(flag.finding)
-  const isClosed = flag !== undefined && flag.periodKey.endsWith('.')
-  if (flag === undefined || isClosed) {
-    if (!isOver) await raiseFlag(tx, context, rule, definition, finding, crossings.length)
+  const flag = standing.find(({ ruleId, periodKey }) => ruleId === rule.id && periodKey === finding.periodKey)
+  if (flag === undefined) {
+    await raiseFlag(tx, context, rule, definition, finding)
     return
   }
-  if (isOver) {
+  if (finding.level === 'below') {
     await endCrossing(tx, context, flag)
     return
   }
-  const isHigher = current === undefined || compare(finding.measured, current.measured) > 0
+  const current = ruleFinding.parse(flag.finding)
+  const isHigher = compare(finding.measured, current.measured) > 0
   const isWorse = flag.level === 'warn' && finding.level === 'limit'
   if (!isHigher && !isWorse) return
   await tx
@@ -88,7 +86,6 @@ async function raiseFlag(
   rule: RuleRow,
   definition: RuleDefinition,
   finding: RuleFinding,
-  earlier: number,
 ): Promise<void> {
   if (finding.level === 'below') return
   await tx.insert(flags).values({
@@ -97,7 +94,7 @@ async function raiseFlag(
     siteId: rule.siteId,
     ruleId: rule.id,
     ruleVersion: rule.version,
-    periodKey: earlier === 0 ? finding.periodKey : `${finding.periodKey}#${earlier + 1}`,
+    periodKey: finding.periodKey,
     level: finding.level,
     state: 'open',
     rule: definition,
@@ -111,6 +108,6 @@ async function raiseFlag(
 async function endCrossing(tx: Transaction, context: Context, flag: FlagRow): Promise<void> {
   await tx
     .update(flags)
-    .set({ periodKey: `${flag.periodKey}.`, changedAt: context.clock() })
+    .set({ endedAt: context.clock(), changedAt: context.clock() })
     .where(eq(flags.id, flag.id))
 }

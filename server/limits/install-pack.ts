@@ -23,7 +23,12 @@ export async function installPack(
     if (!belongs && rule.enabled) {
       await tx
         .update(rules)
-        .set({ enabled: false, changedAt: context.clock(), changedBy: context.person.id, changeReason: 'Profile changed' })
+        .set({
+          enabled: false,
+          changedAt: context.clock(),
+          changedBy: context.person.id,
+          changeReason: 'Profile changed',
+        })
         .where(eq(rules.id, rule.id))
     }
   }

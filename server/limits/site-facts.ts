@@ -38,7 +38,14 @@ export async function gatherSiteFacts(
     .orderBy(containers.code)
   const measures = new Set(wanted.map(({ measure }) => measure))
   const fillings = measures.has('days-since-first-fill')
-    ? new Map((await listFillings(tx, rows.map(({ container }) => container.id))).map((row) => [row.containerId, row]))
+    ? new Map(
+        (
+          await listFillings(
+            tx,
+            rows.map(({ container }) => container.id),
+          )
+        ).map((row) => [row.containerId, row]),
+      )
     : new Map<string, { firstFilledOn: string | null }>()
   return {
     today: rows[0] === undefined ? '1970-01-01' : localDay(now, rows[0].timeZone),
@@ -54,7 +61,9 @@ export async function gatherSiteFacts(
       everHeld,
       isVehicle: container.type === 'van',
     })),
-    generated: measures.has('generated-mass-per-calendar-month') ? await listGenerated(tx, siteId, wanted) : [],
+    generated: measures.has('generated-mass-per-calendar-month')
+      ? await listGenerated(tx, siteId, wanted)
+      : [],
   }
 }
 
@@ -66,7 +75,10 @@ function massOf(
 ): { kilograms: string | null; densityUsed: string | null } {
   if (stream.kind === 'solid') return { kilograms, densityUsed: null }
   if (stream.density === null) return { kilograms: null, densityUsed: null }
-  return { kilograms: add(kilograms, multiply(litres, stream.density)), densityUsed: stream.density }
+  return {
+    kilograms: add(kilograms, multiply(litres, stream.density)),
+    densityUsed: stream.density,
+  }
 }
 
 /**

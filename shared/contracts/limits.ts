@@ -35,6 +35,8 @@ export const flag = z.object({
   finding: ruleFinding,
   raisedAt: instant,
   changedAt: instant,
+  /** When the measure fell below the warn line again; null while it stands. */
+  endedAt: instant.nullable(),
   review: z.object({ at: instant, by: named, note: z.string() }).nullable(),
 })
 export type Flag = z.infer<typeof flag>
