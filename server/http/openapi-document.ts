@@ -8,7 +8,7 @@ import { z } from 'zod'
 import { allContracts } from '@/shared/contracts/all-contracts'
 import type { AnyContract } from '@/shared/contracts/contract'
 import { problemCodes } from '@/shared/problems'
-import packageJson from '../../package.json'
+import packageJson from '@/package.json'
 import { statusOfProblem } from './problems'
 
 extendZodWithOpenApi(z)
