@@ -39,6 +39,12 @@ module.exports = {
       setupFilesAfterEnv: ['<rootDir>/tests/helpers/jest/screen-setup.ts'],
     },
     { ...node, displayName: 'architecture', testMatch: ['<rootDir>/tests/architecture.test.ts'] },
-    { ...node, displayName: 'browser', testMatch: inFolders('browser') },
+    {
+      ...node,
+      displayName: 'browser',
+      testMatch: inFolders('browser'),
+      globalSetup: '<rootDir>/tests/helpers/jest/make-demo-folder.ts',
+      globalTeardown: '<rootDir>/tests/helpers/jest/remove-demo-folder.ts',
+    },
   ],
 }

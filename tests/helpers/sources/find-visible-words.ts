@@ -28,7 +28,12 @@ const visibleProperties = new Set([
   'tooltip',
 ])
 
+/** In plain data these are as often a colour, a type face or a request. */
+const doubtfulInData = new Set(['body', 'heading', 'text'])
+
 const hasLetters = /\p{L}/u
+/** `internal` in data is a code for the program; a screen's words have a capital or a space. */
+const isCode = /^[a-z0-9-]+$/
 const isKey = /^[a-z][A-Za-z]*(\.[\w-]+)+$/
 
 /** Words written into a screen instead of the catalogue, as `file:line words`. */
@@ -36,9 +41,10 @@ export function findVisibleWords({ path, tree }: Source): string[] {
   const found: string[] = []
   const report = (node: ts.Node, words: string) =>
     found.push(`${path}:${lineOf(tree, node)} ${words.trim().replace(/\s+/g, ' ')}`)
-  const look = (node: ts.Expression) => {
+  const look = (node: ts.Expression, isNoWord = isKey) => {
     for (const literal of textsOf(node)) {
-      if (hasLetters.test(literal.text) && !isKey.test(literal.text)) report(literal, literal.text)
+      const { text } = literal
+      if (hasLetters.test(text) && !isKey.test(text) && !isNoWord.test(text)) report(literal, text)
     }
   }
   visit(tree, (node) => {
@@ -50,8 +56,10 @@ export function findVisibleWords({ path, tree }: Source): string[] {
       else if (value !== undefined && ts.isJsxExpression(value) && value.expression)
         look(value.expression)
     }
-    if (ts.isPropertyAssignment(node) && visibleProperties.has(nameOf(node.name)))
-      look(node.initializer)
+    if (ts.isPropertyAssignment(node)) {
+      const name = nameOf(node.name)
+      if (visibleProperties.has(name) && !doubtfulInData.has(name)) look(node.initializer, isCode)
+    }
   })
   return found
 }
