@@ -1,0 +1,3 @@
+import { NotFoundScreen } from '@/modules/ui/not-found-screen'
+
+export default NotFoundScreen
