@@ -47,7 +47,8 @@ async function checkChain(tx: Transaction, head: typeof books.$inferSelect, site
     const rows = await listMovementsAfter(tx, head.siteId, lineNo, batch)
     for (const row of rows) {
       const at = `${siteCode} line ${row.lineNo}`
-      if (row.lineNo !== lineNo + 1) findings.push({ code: 'line-missing', detail: `${at} follows line ${lineNo}` })
+      if (row.lineNo !== lineNo + 1)
+        findings.push({ code: 'line-missing', detail: `${at} follows line ${lineNo}` })
       if (row.previousHash !== previousHash) findings.push({ code: 'chain-broken', detail: at })
       if (hashOfMovement(row) !== row.hash) findings.push({ code: 'line-changed', detail: at })
       previousHash = row.hash
@@ -56,7 +57,10 @@ async function checkChain(tx: Transaction, head: typeof books.$inferSelect, site
     if (rows.length < batch) break
   }
   if (head.lastLineNo !== lineNo || head.lastHash !== previousHash) {
-    findings.push({ code: 'head-differs', detail: `${siteCode} ends at line ${lineNo}, its head says ${head.lastLineNo}` })
+    findings.push({
+      code: 'head-differs',
+      detail: `${siteCode} ends at line ${lineNo}, its head says ${head.lastLineNo}`,
+    })
   }
   return { lines: lineNo, findings }
 }

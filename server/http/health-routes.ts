@@ -12,7 +12,7 @@ export function healthRoutes(services: AppServices): Router {
     // A probe reads the status code; the body says which part is down.
     if (serverVersion === undefined) response.status(503)
     return {
-      status: serverVersion === undefined ? 'down' : 'up',
+      status: serverVersion === undefined ? ('down' as const) : ('up' as const),
       version: services.version,
       database: {
         kind: services.databaseKind,

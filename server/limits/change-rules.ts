@@ -66,16 +66,28 @@ export async function switchRule(
     changeReason: body.reason,
   })
   if (!body.enabled) await withdrawFlags(tx, context, id)
-  await follow(tx, context, before.siteId, id, { what: body.enabled ? 'on' : 'off', reason: body.reason })
+  await follow(tx, context, before.siteId, id, {
+    what: body.enabled ? 'on' : 'off',
+    reason: body.reason,
+  })
   return before.siteId
 }
 
 /** @throws Problem not-found, pack-rule-fixed */
-export async function retireRule(tx: Transaction, context: ActContext, id: string): Promise<string> {
+export async function retireRule(
+  tx: Transaction,
+  context: ActContext,
+  id: string,
+): Promise<string> {
   const before = await getOwnRule(tx, context, id)
   await tx
     .update(rules)
-    .set({ retiredAt: context.clock(), enabled: false, changedAt: context.clock(), changedBy: context.person.id })
+    .set({
+      retiredAt: context.clock(),
+      enabled: false,
+      changedAt: context.clock(),
+      changedBy: context.person.id,
+    })
     .where(eq(rules.id, id))
   await withdrawFlags(tx, context, id)
   await follow(tx, context, before.siteId, id, { what: 'retire' })
@@ -93,7 +105,13 @@ function definitionOf(id: string, body: OwnRule): RuleDefinition {
     'generated-mass-per-calendar-month': isMass,
     'days-since-first-fill': unit === 'days',
   }[body.measure]
-  if (!fits) throw fieldProblem('fields-refused', 'threshold.unit', 'unit-does-not-fit', 'Choose a unit that fits what is measured')
+  if (!fits)
+    throw fieldProblem(
+      'fields-refused',
+      'threshold.unit',
+      'unit-does-not-fit',
+      'Choose a unit that fits what is measured',
+    )
   const isMonthly = body.measure === 'generated-mass-per-calendar-month'
   return ruleDefinition.parse({
     title: body.title,
@@ -159,6 +177,12 @@ async function follow(
   id: string,
   details: Record<string, unknown>,
 ): Promise<void> {
-  await writeAudit(tx, context, { act: 'change-rules', subjectKind: 'rule', subjectId: id, siteId, details })
+  await writeAudit(tx, context, {
+    act: 'change-rules',
+    subjectKind: 'rule',
+    subjectId: id,
+    siteId,
+    details,
+  })
   await evaluateSiteLimits(tx, context, siteId)
 }

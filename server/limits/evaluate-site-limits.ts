@@ -53,7 +53,9 @@ async function keepFlag(
   finding: RuleFinding,
   standing: readonly FlagRow[],
 ): Promise<void> {
-  const flag = standing.find(({ ruleId, periodKey }) => ruleId === rule.id && periodKey === finding.periodKey)
+  const flag = standing.find(
+    ({ ruleId, periodKey }) => ruleId === rule.id && periodKey === finding.periodKey,
+  )
   if (flag === undefined) {
     await raiseFlag(tx, context, rule, definition, finding)
     return

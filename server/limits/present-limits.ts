@@ -13,14 +13,22 @@ import { ruleFinding } from '@/shared/rules/finding'
 import { gatherSiteFacts } from './site-facts'
 
 /** Rules of a site with what each measures now, switched on or not. */
-export async function presentRules(tx: Transaction, siteId: string, now: Date, only?: string): Promise<z.input<typeof rule>[]> {
+export async function presentRules(
+  tx: Transaction,
+  siteId: string,
+  now: Date,
+  only?: string,
+): Promise<z.input<typeof rule>[]> {
   const rows = await tx
     .select({ rule: rules, by: people.name })
     .from(rules)
     .leftJoin(people, eq(people.id, rules.changedBy))
     .where(and(eq(rules.siteId, siteId), only === undefined ? undefined : eq(rules.id, only)))
     .orderBy(sql`${rules.origin} = 'pack'`, rules.packRuleId, rules.id)
-  const read = rows.map((row) => ({ ...row, definition: ruleDefinition.parse(row.rule.definition) }))
+  const read = rows.map((row) => ({
+    ...row,
+    definition: ruleDefinition.parse(row.rule.definition),
+  }))
   const facts = await gatherSiteFacts(
     tx,
     siteId,
@@ -71,7 +79,9 @@ export async function listFlagRows(
     .limit(filter.limit)
 }
 
-export function presentFlag(found: Awaited<ReturnType<typeof listFlagRows>>[number]): z.input<typeof flag> {
+export function presentFlag(
+  found: Awaited<ReturnType<typeof listFlagRows>>[number],
+): z.input<typeof flag> {
   const { flag: row } = found
   return {
     ...row,

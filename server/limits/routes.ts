@@ -47,10 +47,15 @@ export function limitRoutes(services: AppServices): Router {
       before: cursor && { at: new Date(cursor.at), id: cursor.id },
       limit: query.limit + 1,
     })
-    const { rows, next } = pageOf(found, query.limit, ({ flag }) => ({ at: flag.raisedAt.toISOString(), id: flag.id }))
+    const { rows, next } = pageOf(found, query.limit, ({ flag }) => ({
+      at: flag.raisedAt.toISOString(),
+      id: flag.id,
+    }))
     return { rows: rows.map(presentFlag), next }
   })
-  serve(router, services, contracts.readFlag, async (tx, context, { params }) => getFlag(tx, context, params.id))
+  serve(router, services, contracts.readFlag, async (tx, context, { params }) =>
+    getFlag(tx, context, params.id),
+  )
   serve(router, services, contracts.reviewFlag, async (tx, context, { params, body }) => {
     const before = await getFlag(tx, context, params.id)
     demand(context, 'review-flag', { siteId: before.siteId })

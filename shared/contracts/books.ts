@@ -6,6 +6,8 @@ const tag = 'books'
 
 export const groupings = ['stream', 'container', 'hauler', 'facility'] as const
 export const shownUnits = ['gal_us', 'L', 'kg'] as const
+/** What a group is counted in: fluids in the asked unit, filters in pieces, other solids in kilograms. */
+export const groupUnits = [...shownUnits, 'pieces'] as const
 export const sides = ['opening', 'in', 'out', 'adjusted', 'closing'] as const
 
 const year = z.coerce.number().int().min(1990).max(2200)
@@ -41,7 +43,7 @@ export const totalsGroup = z.object({
   streamId: id,
   streamName: z.string(),
   kind: z.enum(['fluid', 'solid']),
-  unit: z.enum(shownUnits),
+  unit: z.enum(groupUnits),
   decimals: z.number().int(),
   densityUsed: decimal.nullable(),
   opening: figure,

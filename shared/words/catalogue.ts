@@ -1,3 +1,4 @@
+import api from './en/api.json'
 import books from './en/books.json'
 import containers from './en/containers.json'
 import documents from './en/documents.json'
@@ -15,6 +16,7 @@ import yard from './en/yard.json'
 /** All words a person reads, by language: a language is data. */
 export const catalogue = {
   en: {
+    api,
     books,
     containers,
     documents,
