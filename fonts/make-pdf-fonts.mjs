@@ -15,21 +15,26 @@ const characters = [
     0x153,
   ],
 ]
+// Letters of central and northern Europe come from a second file of the same face.
+const furtherLatin = [...range(0x100, 0x24f), ...range(0x1e00, 0x1eff)]
 const fonts = [
   ['atkinson-hyperlegible-next-latin-wght-normal', 'text-400', { wght: 400 }],
   ['atkinson-hyperlegible-next-latin-wght-normal', 'text-700', { wght: 700 }],
   ['atkinson-hyperlegible-mono-latin-wght-normal', 'code-400', { wght: 400 }],
   ['barlow-semi-condensed-latin-600-normal', 'heading-600', undefined],
+  ['atkinson-hyperlegible-next-latin-ext-wght-normal', 'text-ext-400', { wght: 400 }, furtherLatin],
+  ['atkinson-hyperlegible-next-latin-ext-wght-normal', 'text-ext-700', { wght: 700 }, furtherLatin],
+  ['barlow-semi-condensed-latin-ext-600-normal', 'heading-ext-600', undefined, furtherLatin],
 ]
 
 function range(from, to) {
   return Array.from({ length: to - from + 1 }, (_, index) => from + index)
 }
 
-for (const [from, to, variationAxes] of fonts) {
+for (const [from, to, variationAxes, taken = characters] of fonts) {
   const bytes = await subsetFont(
     readFileSync(join(here, `${from}.woff2`)),
-    String.fromCodePoint(...characters),
+    String.fromCodePoint(...taken),
     {
       targetFormat: 'truetype',
       ...(variationAxes === undefined ? {} : { variationAxes }),

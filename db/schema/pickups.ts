@@ -162,6 +162,8 @@ export const documents = pgTable(
     pages: integer('pages').notNull(),
     bytes: bytes('bytes').notNull(),
     sha256: text('sha256').notNull(),
+    /** SHA-256 of the canonical facts: printed on the paper, which cannot carry the hash of itself. */
+    factsSha256: text('facts_sha256').notNull(),
     madeAt: instant('made_at').notNull(),
   },
   (table) => [
@@ -172,5 +174,6 @@ export const documents = pgTable(
       foreignColumns: [pickups.organisationId, pickups.id],
     }),
     index('documents_sha256').on(table.sha256),
+    index('documents_facts_sha256').on(table.factsSha256),
   ],
 )

@@ -214,7 +214,7 @@ export const personKind: SetUpKind<typeof people, PersonBody> = {
   order: people.name,
   subjectKind: 'person',
   act: 'change-people',
-  columns: async (tx, context, body, before) => {
+  columns: async (tx, _, body, before) => {
     if (before !== undefined && before.role === 'administrator' && body.role !== 'administrator') {
       await keepAnAdministrator(tx, before.id)
     }

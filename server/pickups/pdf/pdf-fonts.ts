@@ -1,0 +1,91 @@
+import { readFileSync } from 'node:fs'
+import { join } from 'node:path'
+import type { PDFDocument, PDFFont } from 'pdf-lib'
+
+export type FaceName = 'text' | 'bold' | 'heading' | 'code'
+
+/** A face with the second file that carries its further latin letters, where it has one. */
+export type Face = { main: PDFFont; further: PDFFont | null; covers: (code: number) => boolean }
+export type Faces = Record<FaceName, Face>
+
+const files: Record<FaceName, { main: string; further: string | null }> = {
+  text: { main: 'text-400', further: 'text-ext-400' },
+  bold: { main: 'text-700', further: 'text-ext-700' },
+  heading: { main: 'heading-600', further: 'heading-ext-600' },
+  code: { main: 'code-400', further: null },
+}
+
+/** Embeds the product's own fonts, cut down to the letters the document uses. */
+export async function embedFaces(document: PDFDocument): Promise<Faces> {
+  const { default: fontkit } = await import('@pdf-lib/fontkit')
+  document.registerFontkit(fontkit)
+  const read = (name: string) => readFileSync(join(process.cwd(), 'fonts', `${name}.ttf`))
+  const face = async (name: FaceName): Promise<Face> => {
+    const bytes = read(files[name].main)
+    const further = files[name].further
+    const known = new Set(fontkit.create(bytes).characterSet)
+    return {
+      main: await document.embedFont(bytes, { subset: true }),
+      further: further === null ? null : await document.embedFont(read(further), { subset: true }),
+      covers: (code) => known.has(code),
+    }
+  }
+  return {
+    text: await face('text'),
+    bold: await face('bold'),
+    heading: await face('heading'),
+    code: await face('code'),
+  }
+}
+
+type Run = { text: string; font: PDFFont }
+
+/** A line in runs of one font each; what neither file has is shown as a question mark rather than as nothing. */
+export function runsOf(face: Face, text: string): Run[] {
+  const runs: Run[] = []
+  for (const character of text.normalize('NFC')) {
+    const code = character.codePointAt(0) ?? 0
+    const isFurther =
+      face.further !== null &&
+      ((code >= 0x100 && code <= 0x24f) || (code >= 0x1e00 && code <= 0x1eff)) &&
+      !face.covers(code)
+    const font = isFurther && face.further !== null ? face.further : face.main
+    const shown =
+      isFurther || face.covers(code) ? character : code === 0x202f || code === 0x2009 ? ' ' : '?'
+    const last = runs.at(-1)
+    if (last !== undefined && last.font === font) last.text += shown
+    else runs.push({ text: shown, font })
+  }
+  return runs
+}
+
+export function widthOf(face: Face, text: string, size: number): number {
+  return runsOf(face, text).reduce(
+    (width, run) => width + run.font.widthOfTextAtSize(run.text, size),
+    0,
+  )
+}
+
+/** Breaks text at spaces, and words that are wider than the column wherever they must. */
+export function wrap(face: Face, text: string, size: number, width: number): string[] {
+  return text.split('\n').flatMap((paragraph) => {
+    const lines: string[] = []
+    let line = ''
+    for (const word of paragraph.split(' ')) {
+      const joined = line === '' ? word : `${line} ${word}`
+      if (widthOf(face, joined, size) <= width) {
+        line = joined
+        continue
+      }
+      if (line !== '') lines.push(line)
+      line = word
+      while (widthOf(face, line, size) > width && line.length > 1) {
+        let fits = line.length - 1
+        while (fits > 1 && widthOf(face, line.slice(0, fits), size) > width) fits -= 1
+        lines.push(line.slice(0, fits))
+        line = line.slice(fits)
+      }
+    }
+    return [...lines, line]
+  })
+}
