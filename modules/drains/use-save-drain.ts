@@ -54,7 +54,8 @@ export function useSaveDrain({ form, recordId, personId, site, known, names }: S
     })
   }
 
-  async function save(): Promise<void> {
+  /** @param presets answers given in advance, by question code: a button that says so pressed instead of Save */
+  async function save(presets: Record<string, string> = {}): Promise<void> {
     form.clearErrors()
     setProblem(undefined)
     const around = { now: new Date(), timeZone: site.timeZone }
@@ -68,8 +69,10 @@ export function useSaveDrain({ form, recordId, personId, site, known, names }: S
     try {
       const found = await askBeforeSaving(body, known)
       setAsked(found)
-      if (found.questions.some((question) => !answerTo(question, answered))) return
-      await keep({ ...body, answers: answersTo(found.questions, answered) })
+      const given = [...answered, ...answersInAdvance(found.questions, presets)]
+      setAnswered(given)
+      if (found.questions.some((question) => !answerTo(question, given))) return
+      await keep({ ...body, answers: answersTo(found.questions, given) })
     } catch (error) {
       refuse(error)
     } finally {
@@ -126,6 +129,16 @@ function isSame(a: Question, b: Question): boolean {
 
 function answerTo(question: Question, answered: readonly Answered[]): string | undefined {
   return answered.find((given) => isSame(given, question))?.answer
+}
+
+function answersInAdvance(
+  questions: readonly Question[],
+  presets: Record<string, string>,
+): Answered[] {
+  return questions.flatMap((question) => {
+    const answer = presets[question.code]
+    return answer === undefined ? [] : [{ ...question, answer }]
+  })
 }
 
 function answersTo(questions: readonly Question[], answered: readonly Answered[]) {

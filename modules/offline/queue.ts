@@ -128,6 +128,13 @@ export function createQueue({ personId, store, send, now, random }: QueueParts) 
     })
   }
 
+  /** Takes an accepted record off the list: it was undone in the book. */
+  async function forget(id: string): Promise<void> {
+    await store.remove(id)
+    await reload()
+    channel?.postMessage('changed')
+  }
+
   /** Accepted records are shown for a day, then only the book has them. */
   async function open(): Promise<void> {
     for (const record of await store.list(personId)) {
@@ -144,6 +151,7 @@ export function createQueue({ personId, store, send, now, random }: QueueParts) 
     add,
     flush,
     remove,
+    forget,
     /** Newest state of all records, oldest first; a new array after every change. */
     records: () => records,
     subscribe: (listener: () => void) => {

@@ -1,0 +1,3 @@
+import { UnsentScreen } from '@/modules/drains/unsent-screen'
+
+export default UnsentScreen

@@ -1,0 +1,3 @@
+import { YardScreen } from '@/modules/yard/yard-screen'
+
+export default YardScreen
