@@ -148,7 +148,12 @@ test('every file of the tests is a test or serves one', () => {
   const idle = tests
     .map(({ path }) => path)
     // A file that is started as a process, or by jest, is named instead of imported.
-    .filter((path) => !reached.has(path) && !named.includes(basename(path).replace(/\.tsx?$/, '')))
+    .filter(
+      (path) =>
+        !path.endsWith('.d.ts') &&
+        !reached.has(path) &&
+        !named.includes(basename(path).replace(/\.tsx?$/, '')),
+    )
   expect(idle).toEqual([])
 })
 

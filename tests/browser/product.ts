@@ -1,6 +1,6 @@
 import { spawn } from 'node:child_process'
 import { cpSync, existsSync, mkdtempSync, rmSync } from 'node:fs'
-import { createServer, type AddressInfo } from 'node:net'
+import { createServer, type AddressInfo, type Socket } from 'node:net'
 import { tmpdir } from 'node:os'
 import { join, resolve } from 'node:path'
 
@@ -52,7 +52,9 @@ async function start(dataFolder: string, env: Record<string, string>): Promise<P
     },
     stdio: ['ignore', 'pipe', 'pipe'],
   })
-  const ended = new Promise<number | null>((done) => child.on('exit', done))
+  const ended = new Promise<number | null>((done) => child.on('close', done))
+  // A test that fails before it stops the product must neither leave it running nor keep the run from ending.
+  globalThis.atEndOfFile?.(() => child.kill('SIGKILL'))
   const said: string[] = []
   child.stderr.on('data', (chunk: Buffer) => said.push(chunk.toString()))
   await new Promise<void>((ready, failed) => {
@@ -62,7 +64,10 @@ async function start(dataFolder: string, env: Record<string, string>): Promise<P
     })
     void ended.then((code) => failed(new Error(`The product ended with ${code}: ${said.join('')}`)))
   })
+  const handles = [child, child.stdout as Socket, child.stderr as Socket]
+  for (const handle of handles) handle.unref()
   const stop = (signal: NodeJS.Signals = 'SIGTERM') => {
+    for (const handle of handles) handle.ref()
     if (child.exitCode === null && child.signalCode === null) child.kill(signal)
     return ended
   }

@@ -9,5 +9,12 @@ module.exports = class OuterEnvironment extends TestEnvironment {
     await super.setup()
     this.global.requireOutside = (name) => require(name)
     this.global.importOutside = (name) => import(name)
+    this.lastThings = []
+    this.global.atEndOfFile = (lastThing) => this.lastThings.push(lastThing)
+  }
+
+  async teardown() {
+    for (const lastThing of this.lastThings) await lastThing()
+    await super.teardown()
   }
 }
