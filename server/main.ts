@@ -11,6 +11,9 @@ import type { AppServices, DemoInfo } from './app-services'
 import { readConfig, type Config } from './config'
 import { createApp } from './create-app'
 import { usualRates } from './http/rate-limits'
+import { runMailJob } from './mail/run-mail-job'
+import type { SendMail } from './mail/send-outbox'
+import { smtpSender } from './mail/smtp'
 import { secretKey } from './people/tokens'
 
 /** How long requests that are being answered may take to end after a stop was asked for. */
@@ -40,8 +43,10 @@ async function main(): Promise<void> {
       rates: usualRates,
     })
     const server = await listen(app, config)
+    const mail = runMailJob(services, mailSender(config))
     stopOnSignal(async () => {
       await closed(server)
+      await mail.stop()
       await opened.close()
     })
     announce(server, config, services.demo)
@@ -49,6 +54,11 @@ async function main(): Promise<void> {
     await opened.close()
     throw error
   }
+}
+
+/** Null without a mail server: then mail stays in the local mailbox. */
+function mailSender({ smtpUrl, mailFrom }: Config): SendMail | null {
+  return smtpUrl === undefined ? null : smtpSender(smtpUrl, mailFrom)
 }
 
 /** @throws Error in one line when the address cannot be had */
