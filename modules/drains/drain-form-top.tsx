@@ -29,13 +29,15 @@ export function DrainFormTop({ title }: { title: string }) {
     <View
       style={{ height: target.yard, flexDirection: 'row', alignItems: 'center', gap: gap.small }}
     >
-      <Button
-        kind="quiet"
-        icon="back"
-        isIconOnly
-        label={t('drains.form.back')}
-        onPress={() => (router.canGoBack() ? router.back() : router.replace('/drains'))}
-      />
+      <View>
+        <Button
+          kind="quiet"
+          icon="back"
+          isIconOnly
+          label={t('drains.form.back')}
+          onPress={() => (router.canGoBack() ? router.back() : router.replace('/drains'))}
+        />
+      </View>
       <h1
         ref={heading}
         tabIndex={-1}

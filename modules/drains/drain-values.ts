@@ -1,5 +1,5 @@
 import type { z } from 'zod'
-import { filterSizes, type drainFacts, type filterStates } from '@/shared/contracts/drains'
+import { type filterSizes, type drainFacts, type filterStates } from '@/shared/contracts/drains'
 import type { MeasuringMethod } from '@/shared/quantities/methods'
 import type { MassUnit, VolumeUnit } from '@/shared/quantities/units'
 import { localDay, localTime } from '@/shared/calendar'

@@ -41,7 +41,7 @@ export function PickRow({ label, value, placeholder, detail, icon, hasError, onP
       }}
     >
       <Icon name={icon} colour={colours.inkSoft} />
-      <View style={{ flex: 1, minWidth: 0 }}>
+      <View style={{ flex: 1, minWidth: 96 }}>
         <Text kind="label" numberOfLines={1} style={{ lineHeight: 18 }}>
           {label}
         </Text>
@@ -54,7 +54,7 @@ export function PickRow({ label, value, placeholder, detail, icon, hasError, onP
         </Text>
       </View>
       {detail !== undefined && (
-        <Text kind="label" numberOfLines={1} style={{ maxWidth: '45%', textAlign: 'right' }}>
+        <Text kind="label" numberOfLines={1} style={{ maxWidth: '62%', textAlign: 'right' }}>
           {detail}
         </Text>
       )}

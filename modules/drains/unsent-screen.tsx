@@ -15,9 +15,11 @@ import { EmptyState } from '../ui/loading'
 import { gap } from '../ui/measures'
 import { Notice } from '../ui/notice'
 import { Screen } from '../ui/screen'
+import { Status } from '../ui/status'
 import { Text } from '../ui/text'
 import { fieldWords } from '../api/field-words'
 import { QueueStatus } from './queue-status'
+import { useDrainDraft } from './use-drain-draft'
 
 const dayMs = 24 * 3_600_000
 
@@ -30,6 +32,7 @@ export function UnsentScreen() {
   const [now] = useState(() => Date.now())
   const [isSending, setSending] = useState(false)
   const [removing, setRemoving] = useState<QueuedRecord>()
+  const draft = useDrainDraft()
   const unsent = records.filter(isUnsent)
   const sent = records.filter((record) => !isUnsent(record)).reverse()
   const lastTried = unsent
@@ -70,6 +73,13 @@ export function UnsentScreen() {
             onPress={() => void sendNow()}
           />
         </>
+      )}
+      {draft !== undefined && (
+        <Card>
+          <Text kind="strong">{t('drains.unsent.drafts')}</Text>
+          <Status kind="waiting" label={t('drains.states.draft')} />
+          <LinkText href="/drains/new">{t('drains.unsent.open')}</LinkText>
+        </Card>
       )}
       {unsent.map((record) => (
         <UnsentCard key={record.id} record={record} onRemove={() => setRemoving(record)} />

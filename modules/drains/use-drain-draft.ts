@@ -1,5 +1,7 @@
-import { useEffect, useRef } from 'react'
+import { useEffect, useRef, useState } from 'react'
 import { useWatch, type Control } from 'react-hook-form'
+import { useSite } from '../session/site-provider'
+import { useSession } from '../session/use-session'
 import { forgetDraft, keepDraft, readDraft } from '../offline/drafts'
 import type { DrainValues } from './drain-values'
 
@@ -9,7 +11,7 @@ export type DrainDraft = { recordId: string; siteId: string; values: DrainValues
 /** Typing settles before it is written; a lost half second of typing is the most a killed tab costs. */
 const settleMs = 500
 
-export function draftKey(personId: string): string {
+function draftKey(personId: string): string {
   return `${personId} drain`
 }
 
@@ -25,6 +27,24 @@ export async function readDrainDraft(
 
 export async function forgetDrainDraft(personId: string): Promise<void> {
   await forgetDraft(draftKey(personId)).catch(() => undefined)
+}
+
+/** The draft of this person at the site on screen, for the list of what is on the phone. */
+export function useDrainDraft(): DrainDraft | undefined {
+  const { person } = useSession()
+  const siteId = useSite().site?.id
+  const [draft, setDraft] = useState<DrainDraft>()
+  useEffect(() => {
+    if (siteId === undefined) return
+    let isCurrent = true
+    void readDrainDraft(person.id, siteId).then((found) => {
+      if (isCurrent) setDraft(found)
+    })
+    return () => {
+      isCurrent = false
+    }
+  }, [person.id, siteId])
+  return draft
 }
 
 /** Keeps what is typed on the phone, from the first change on, for as long as `isKept`. */

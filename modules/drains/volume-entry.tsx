@@ -32,8 +32,19 @@ type Props = {
 const pauseMs = 1_000
 
 /** The number, its unit, and the container as it would stand: 124 px high on a phone. */
-export function VolumeEntry(props: Props) {
-  const { typed, unit, container, pouredLitres } = props
+export function VolumeEntry({
+  typed,
+  unit,
+  onType,
+  onUnitTyped,
+  onNextUnit,
+  onSubmit,
+  usesPhoneKeys,
+  errorId,
+  container,
+  pouredLitres,
+  fieldRef,
+}: Props) {
   const { t } = useTranslation()
   const colours = useColours()
   const announce = useAnnounce()
@@ -53,10 +64,9 @@ export function VolumeEntry(props: Props) {
   }, [typed, roomWords, announce])
 
   function type(next: string) {
-    props.onType(next)
+    onType(next)
     const read = readVolume(next, unit)
-    if (read.ok && read.unitWasTyped && read.unit !== unit)
-      props.onUnitTyped(read.unit as VolumeUnit)
+    if (read.ok && read.unitWasTyped && read.unit !== unit) onUnitTyped(read.unit as VolumeUnit)
   }
 
   return (
@@ -64,11 +74,11 @@ export function VolumeEntry(props: Props) {
       <View style={{ flex: 1, minWidth: 0, gap: gap.tiny }}>
         <View style={{ flexDirection: 'row', gap: gap.small, alignItems: 'center' }}>
           <input
-            ref={props.fieldRef}
+            ref={fieldRef}
             aria-label={t('drains.form.volumeIn', { unit: unitWords })}
-            aria-invalid={props.errorId !== undefined}
-            aria-describedby={props.errorId}
-            inputMode={props.usesPhoneKeys ? 'decimal' : 'none'}
+            aria-invalid={errorId !== undefined}
+            aria-describedby={errorId}
+            inputMode={usesPhoneKeys ? 'decimal' : 'none'}
             autoComplete="off"
             value={typed}
             maxLength={14}
@@ -76,7 +86,7 @@ export function VolumeEntry(props: Props) {
             onKeyDown={(event) => {
               if (event.key === 'Enter') {
                 event.preventDefault()
-                props.onSubmit()
+                onSubmit()
               }
             }}
             style={{
@@ -92,14 +102,14 @@ export function VolumeEntry(props: Props) {
               textAlign: 'right',
               color: colours.ink,
               backgroundColor: colours.sheet,
-              border: `${props.errorId === undefined ? 1 : 3}px solid ${props.errorId === undefined ? colours.edge : colours.stop.edge}`,
+              border: `${errorId === undefined ? 1 : 3}px solid ${errorId === undefined ? colours.edge : colours.stop.edge}`,
               borderRadius: radius,
             }}
           />
           <Pressable
             role="button"
             aria-label={t('drains.form.unit', { unit: unitWords })}
-            onPress={props.onNextUnit}
+            onPress={onNextUnit}
             style={{
               width: target.primary,
               height: target.yard,

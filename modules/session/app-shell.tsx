@@ -46,7 +46,7 @@ export function AppShell({ help, children }: { help: ReactNode; children: ReactN
   const { site } = useSite()
   const router = useRouter()
   const path = usePathname()
-  const isPhone = useWindowClass() === 'phone'
+  const windowClass = useWindowClass()
   const [isListOpen, setListOpen] = useState(false)
   const mayLog = site !== undefined && can('record-drain', { siteId: site.id })
 
@@ -65,7 +65,7 @@ export function AppShell({ help, children }: { help: ReactNode; children: ReactN
     [person.role, path, t],
   )
 
-  if (isPhone && isWholePhone(path)) return children
+  if (windowClass === 'phone' && isWholePhone(path)) return children
   return (
     <Shell
       items={items}
@@ -76,7 +76,7 @@ export function AppShell({ help, children }: { help: ReactNode; children: ReactN
             kind="primary"
             isLarge
             isWide
-            icon="plus"
+            icon={windowClass === 'wide' ? undefined : 'plus'}
             label={t('yard.logDrain')}
             onPress={newDrain}
           />

@@ -11,6 +11,7 @@ import { Button } from '../ui/button'
 import { Card, Stack } from '../ui/card'
 import { Field } from '../ui/field'
 import { Heading } from '../ui/heading'
+import { fonts } from '../ui/measures'
 import { Notice } from '../ui/notice'
 import { Screen } from '../ui/screen'
 import { Text } from '../ui/text'
@@ -53,8 +54,18 @@ export function SignInScreen({ next }: { next: string | undefined }) {
 
   return (
     <View style={{ flex: 1, alignItems: 'center' }}>
-      <Screen title={t('session.signIn.title')} width="narrow">
-        <Text>{t('session.tagline')}</Text>
+      <Screen
+        title={t('session.signIn.title')}
+        width="narrow"
+        before={
+          <View>
+            <Text kind="strong" style={{ fontFamily: fonts.heading, fontSize: 40, lineHeight: 52 }}>
+              {t('session.product')}
+            </Text>
+            <Text>{t('session.tagline')}</Text>
+          </View>
+        }
+      >
         {state.hasEnded && problem === undefined && (
           <Notice kind="note" title={t('session.signIn.ended')} />
         )}

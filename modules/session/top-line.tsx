@@ -42,7 +42,9 @@ export function TopLine({ help }: { help: ReactNode }) {
       {unsent > 0 && (
         <LinkText href="/drains/unsent">{t('session.unsent.link', { count: unsent })}</LinkText>
       )}
-      <PersonMenu help={help} />
+      <View>
+        <PersonMenu help={help} />
+      </View>
     </View>
   )
 }

@@ -14,6 +14,7 @@ import { gap, target } from '../ui/measures'
 import { Status } from '../ui/status'
 import { Text } from '../ui/text'
 import { useColours } from '../ui/theme'
+import { useWindowClass } from '../ui/use-window-class'
 
 type Props = { site: Site; containers: readonly Container[] }
 
@@ -58,6 +59,7 @@ function fullness({ litres, fillLineLitres }: Container): string {
 function ContainerRow({ container, site }: { container: Container; site: Site }) {
   const { t } = useTranslation()
   const colours = useColours()
+  const isPhone = useWindowClass() === 'phone'
   const shown = (litres: string) => formatLitresAs(litres, site.volumeUnit)
   const room = t(
     container.level === 'over'
@@ -86,6 +88,21 @@ function ContainerRow({ container, site }: { container: Container; site: Site })
   const stateWords = t(`yard.levels.${state.word}`)
   const age =
     container.ageDays === null ? '' : t('yard.containers.age', { count: container.ageDays })
+  const standing = (
+    <View
+      style={{
+        flexDirection: isPhone ? 'row' : 'column',
+        flexWrap: 'wrap',
+        alignItems: isPhone ? 'center' : 'flex-end',
+        gap: isPhone ? gap.small : gap.tiny,
+      }}
+    >
+      <Text kind="figure">{room}</Text>
+      <View>
+        <Status kind={state.kind} label={stateWords} />
+      </View>
+    </View>
+  )
   return (
     <LinkBlock
       href={`/containers/${container.code}`}
@@ -115,11 +132,9 @@ function ContainerRow({ container, site }: { container: Container; site: Site })
         <View style={{ flex: 1, minWidth: 0 }}>
           <Text kind="strong">{`${container.code} ${container.description}`.trim()}</Text>
           <Text kind="label">{[container.stream.name, age].filter(Boolean).join(' · ')}</Text>
+          {isPhone && standing}
         </View>
-        <View style={{ alignItems: 'flex-end', gap: gap.tiny }}>
-          <Text kind="figure">{room}</Text>
-          <Status kind={state.kind} label={stateWords} />
-        </View>
+        {!isPhone && standing}
       </View>
     </LinkBlock>
   )

@@ -104,7 +104,6 @@ function Today({ site, yard }: { site: Site; yard: Yard }) {
           <LatestDrains site={site} drains={yard.latestDrains} />
         </View>
       </View>
-      <Text kind="hint">{t('yard.deferral')}</Text>
     </View>
   )
 }
@@ -114,15 +113,18 @@ function BeforeYouDrain({ day }: { day: string }) {
   const [isHidden, setHidden] = useState(() => areCautionsHidden(day))
   if (isHidden) {
     return (
-      <Button
-        kind="quiet"
-        icon="info"
-        label={t('yard.cautions.show')}
-        onPress={() => {
-          showCautions()
-          setHidden(false)
-        }}
-      />
+      <View>
+        <Button
+          kind="quiet"
+          icon="info"
+          label={t('yard.cautions.show')}
+          onPress={() => {
+            showCautions()
+            setHidden(false)
+          }}
+        />
+        <Text kind="hint">{t('yard.deferral')}</Text>
+      </View>
     )
   }
   return (
