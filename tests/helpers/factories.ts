@@ -269,8 +269,7 @@ export function drainBody(
     id: randomUUID(),
     siteId: site.id,
     machine: { kind: 'listed', machineId: of.machine.id } as
-      | { kind: 'listed'; machineId: string }
-      | { kind: 'unlisted'; description: string },
+      { kind: 'listed'; machineId: string } | { kind: 'unlisted'; description: string },
     streamId: streamOf(site, 'mineral'),
     occurredAt: '2025-03-10T15:00:00Z',
     volume: { value: '10', unit: 'gal_us' },
