@@ -1,11 +1,8 @@
 import { Router } from 'express'
-import { and, eq, isNull } from 'drizzle-orm'
 import { findDrain, listDrainRecords, listMarkRecords } from '@/db/queries/drains'
-import { marks } from '@/db/schema/drains'
 import * as contracts from '@/shared/contracts/drains'
 import { demand } from '../act-context'
 import type { AppServices } from '../app-services'
-import { writeAudit } from '../audit/write-audit'
 import { pageOf, readCursor } from '../http/cursor'
 import { serve } from '../http/route'
 import { problem } from '../problem'
@@ -15,6 +12,7 @@ import { askQuestions } from './ask-questions'
 import { presentDrain, presentDrainRows, presentMark } from './present-drain'
 import { recordDrain } from './record-drain'
 import { resolveDrain } from './resolve-drain'
+import { reviewMark } from './review-mark'
 import { strikeDrain } from './strike-drain'
 
 export function drainRoutes(services: AppServices): Router {
@@ -83,22 +81,7 @@ export function drainRoutes(services: AppServices): Router {
   })
 
   serve(router, services, contracts.reviewMark, async (tx, context, { params, body }) => {
-    const [before] = await listMarkRecords(tx, { id: params.id })
-    if (before === undefined) throw problem('not-found')
-    demand(context, 'review-mark', { siteId: before.mark.siteId })
-    const reviewed = await tx
-      .update(marks)
-      .set({ reviewedAt: context.clock(), reviewedBy: context.person.id, reviewNote: body.note })
-      .where(and(eq(marks.id, params.id), isNull(marks.reviewedAt)))
-      .returning({ id: marks.id })
-    if (reviewed.length === 0) throw problem('already-reviewed')
-    await writeAudit(tx, context, {
-      act: 'review-mark',
-      subjectKind: 'mark',
-      subjectId: params.id,
-      siteId: before.mark.siteId,
-      details: { code: before.mark.code, note: body.note },
-    })
+    await reviewMark(tx, context, params.id, body.note)
     const [after] = await listMarkRecords(tx, { id: params.id })
     if (after === undefined) throw problem('not-found')
     return presentMark(after)

@@ -1,17 +1,15 @@
 import { Router } from 'express'
-import { and, eq } from 'drizzle-orm'
 import type { Transaction } from '@/db/client'
-import { flags } from '@/db/schema/limits'
 import * as contracts from '@/shared/contracts/limits'
-import { demand, type ActContext } from '../act-context'
+import type { ActContext } from '../act-context'
 import type { AppServices } from '../app-services'
-import { writeAudit } from '../audit/write-audit'
 import { pageOf, readCursor } from '../http/cursor'
 import { serve } from '../http/route'
 import { problem } from '../problem'
 import { getSite, sitesSeen } from '../sites-seen'
 import { changeRule, createRule, retireRule, switchRule } from './change-rules'
 import { listFlagRows, presentFlag, presentRules } from './present-limits'
+import { reviewFlag } from './review-flag'
 
 export function limitRoutes(services: AppServices): Router {
   const router = Router()
@@ -57,26 +55,7 @@ export function limitRoutes(services: AppServices): Router {
     getFlag(tx, context, params.id),
   )
   serve(router, services, contracts.reviewFlag, async (tx, context, { params, body }) => {
-    const before = await getFlag(tx, context, params.id)
-    demand(context, 'review-flag', { siteId: before.siteId })
-    const reviewed = await tx
-      .update(flags)
-      .set({
-        state: 'reviewed',
-        reviewedAt: context.clock(),
-        reviewedBy: context.person.id,
-        reviewNote: body.note,
-      })
-      .where(and(eq(flags.id, params.id), eq(flags.state, 'open')))
-      .returning({ id: flags.id })
-    if (reviewed.length === 0) throw problem('already-reviewed')
-    await writeAudit(tx, context, {
-      act: 'review-flag',
-      subjectKind: 'flag',
-      subjectId: params.id,
-      siteId: before.siteId,
-      details: { rule: before.rule.title, note: body.note },
-    })
+    await reviewFlag(tx, context, params.id, body.note)
     return getFlag(tx, context, params.id)
   })
   return router

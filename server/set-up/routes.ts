@@ -17,6 +17,7 @@ import { serve } from '../http/route'
 import { hashPassword } from '../people/passwords'
 import { problem } from '../problem'
 import { sitesSeen } from '../sites-seen'
+import { addPermit } from './add-permit'
 import * as kinds from './set-up-kinds'
 import {
   changeRecord,
@@ -76,18 +77,7 @@ export function setUpRoutes(services: AppServices): Router {
 
   serve(router, services, contracts.addPermit, async (tx, context, { params, body }) => {
     const party = await presentedParty(tx, params.id)
-    await tx.insert(permits).values({
-      ...body,
-      partyId: party.id,
-      organisationId: context.person.organisationId,
-      createdAt: context.clock(),
-    })
-    await writeAudit(tx, context, {
-      act: 'change-set-up',
-      subjectKind: 'party',
-      subjectId: party.id,
-      details: { what: 'permit', given: body },
-    })
+    await addPermit(tx, context, party.id, body)
     return presentedParty(tx, party.id)
   })
   serve(router, services, contracts.retirePermit, async (tx, context, { params }) => {
