@@ -12,8 +12,10 @@ export class ReplyCache extends Map<string, State> implements Cache {
   private isClosed = false
 
   constructor(personId: string, kept: Map<string, State>) {
-    super(kept)
+    super()
     this.personId = personId
+    // Not handed to Map's constructor: it would call our `set` before the fields exist.
+    for (const [key, state] of kept) super.set(key, state)
   }
 
   override set(key: string, state: State): this {

@@ -1,4 +1,4 @@
-import useSWR, { useSWRConfig , unstable_serialize } from 'swr'
+import useSWR, { useSWRConfig, unstable_serialize } from 'swr'
 import type { AnyContract, ReplyOf } from '@/shared/contracts/contract'
 import { call } from './call'
 import type { InputOf } from './fetch-reply'

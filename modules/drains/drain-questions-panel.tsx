@@ -81,15 +81,27 @@ function OneQuestion(props: Props & { question: Question }) {
   const { question, shownIn, onChoice, onKeep } = props
   const { t } = useTranslation()
   const [reason, setReason] = useState<string>()
-  const facts = slipFacts(question.code, question.facts, shownIn)
+  const { value } = props.typedVolume
+  const facts = {
+    ...slipFacts(question.code, question.facts, shownIn),
+    // As typed: a person looks for the very figure they wrote.
+    typed: formatTyped(value, props.typedVolume.unit),
+    meant: formatTyped(value, otherUnit(question.code, props.typedVolume.unit)),
+  }
   const offers = offersOf(props, (key, values) => t(`drains.questions.choices.${key}`, values))
   return (
     <Stack space={gap.small}>
       <Text kind="strong">
         {t([`drains.questions.${question.code}.text`, 'drains.marks.unknown'], facts)}
       </Text>
-      {offers.map(({ label, choice }) => (
-        <Button key={label} kind="primary" isWide label={label} onPress={() => onChoice(choice)} />
+      {offers.map(({ label, choice }, position) => (
+        <Button
+          key={label}
+          kind={position === 0 ? 'primary' : 'secondary'}
+          isWide
+          label={label}
+          onPress={() => onChoice(choice)}
+        />
       ))}
       {(keepsOf[question.code] ?? []).map((keep) => {
         const words = t(`drains.questions.${question.code}.keeps.${keep}`, facts)

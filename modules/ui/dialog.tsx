@@ -27,9 +27,18 @@ export function Dialog({
   useEffect(() => {
     const dialog = here.current
     if (dialog === null) return
-    if (isOpen && !dialog.open) dialog.showModal()
+    if (isOpen && !dialog.open) {
+      dialog.showModal()
+      // The browser goes to the first control; where that lies below the fold, reading begins at the title instead.
+      if (dialog.scrollHeight > dialog.clientHeight) {
+        const heading = document.getElementById(titleId)
+        heading?.setAttribute('tabindex', '-1')
+        heading?.focus()
+        dialog.scrollTop = 0
+      }
+    }
     if (!isOpen && dialog.open) dialog.close()
-  }, [isOpen])
+  }, [isOpen, titleId])
   if (!isOpen) return null
   return (
     <dialog
