@@ -236,7 +236,6 @@ export function DrainForm({ start, site, choices, onAnother }: Props) {
           <View style={{ flex: 1 }}>
             <Button
               isWide
-              isLarge
               busy={saving.isAsking}
               label={t('drains.questions.over-fill-line.keeps.already-poured')}
               hint={saveLabel}

@@ -19,8 +19,9 @@ export function usePathname() {
   return '/drains/new'
 }
 
-export function Link({ href, children, ...rest }: { href: unknown; children: ReactNode }) {
-  const label = 'aria-label' in rest ? String(rest['aria-label']) : undefined
+type LinkProps = { href: unknown; children: ReactNode; 'aria-label'?: string }
+
+export function Link({ href, children, 'aria-label': label }: LinkProps) {
   return (
     <a href={String(href)} aria-label={label}>
       {children}
