@@ -1,4 +1,12 @@
-import { absolute, compare, divide, isPositive, multiply, subtract } from './quantities/decimals'
+import {
+  absolute,
+  add,
+  compare,
+  divide,
+  isPositive,
+  multiply,
+  subtract,
+} from './quantities/decimals'
 
 /**
  * What is asked before a drain is saved, and marked when it was saved all the same: a drain is never refused for what
@@ -69,15 +77,26 @@ export function questionsOf(
   recent: readonly RecordedDrain[],
 ): DrainQuestion[] {
   return [
-    ...drain.legs.flatMap((leg) => containerQuestions(drain, leg)),
+    ...pouredInto(drain.legs).flatMap((leg) => containerQuestionsOf(drain, leg)),
     ...unitSlip(drain),
     ...overMachine(drain),
     ...lookAlikes(drain, recent),
   ]
 }
 
-function containerQuestions(
-  drain: DrainInQuestion,
+/** One entry a container, however many legs name it: what counts is what it then holds. */
+function pouredInto(legs: DrainInQuestion['legs']): DrainInQuestion['legs'] {
+  const byContainer = new Map<string, DrainInQuestion['legs'][number]>()
+  for (const { container, litres } of legs) {
+    const before = byContainer.get(container.id)
+    byContainer.set(container.id, { container, litres: add(before?.litres ?? '0', litres) })
+  }
+  return [...byContainer.values()]
+}
+
+/** What pouring a fluid into a container raises, be it drained or transferred. */
+export function containerQuestionsOf(
+  fluid: Pick<DrainInQuestion, 'streamId' | 'streamName'>,
   { container, litres }: DrainInQuestion['legs'][number],
 ): DrainQuestion[] {
   const asked: DrainQuestion[] = []
@@ -85,8 +104,8 @@ function containerQuestions(
     asked.push({ code, containerId: container.id, facts: { container: container.code, ...facts } })
   if (container.isRetired) ask('container-retired', {})
   if (container.isHeld) ask('container-held', { reason: container.holdReason })
-  if (container.streamId !== drain.streamId) {
-    ask('wrong-stream', { containerStream: container.streamName, drainStream: drain.streamName })
+  if (container.streamId !== fluid.streamId) {
+    ask('wrong-stream', { containerStream: container.streamName, drainStream: fluid.streamName })
   }
   const room = subtract(container.fillLineLitres, container.litres)
   const over = subtract(litres, room)

@@ -71,13 +71,14 @@ export async function listContainersWithContents(
 
 /**
  * First day something was poured in since each container last stood empty (or below), and whether an estimate came in
- * since. A container that holds nothing now has no row.
+ * since. Lines that were corrected and their mirrors never happened: a struck drain filled nothing, a voided shipment
+ * emptied nothing. A container that holds nothing now has no row.
  */
 export async function listFillings(tx: Transaction, containerIds: readonly string[]) {
   if (containerIds.length === 0) return []
   const result = await tx.execute(sql`
     with moves as (
-      select a.container_id, m.line_no, m.occurred_on, m.is_estimate, m.reverses,
+      select a.container_id, m.line_no, m.occurred_on, m.is_estimate,
         (m.to_account_id = a.id) as is_in,
         sum(case when m.to_account_id = a.id then m.litres + m.kilograms + m.pieces
                  else -(m.litres + m.kilograms + m.pieces) end)
@@ -85,12 +86,14 @@ export async function listFillings(tx: Transaction, containerIds: readonly strin
       from ${accounts} a
       join ${movements} m on m.from_account_id = a.id or m.to_account_id = a.id
       where a.container_id = any(${sql.param(`{${containerIds.join(',')}}`)}::uuid[])
+        and m.reverses is null
+        and not exists (select 1 from ${movements} mirror where mirror.reverses = m.id)
     ), emptied as (
       select container_id, max(line_no) filter (where standing <= 0) as line_no from moves group by container_id
     )
     select moves.container_id as "containerId",
       min(moves.occurred_on) filter (where is_in)::text as "firstFilledOn",
-      bool_or(is_in and is_estimate and reverses is null) as "hasEstimates"
+      bool_or(is_in and is_estimate) as "hasEstimates"
     from moves join emptied on emptied.container_id = moves.container_id
     where moves.line_no > coalesce(emptied.line_no, 0)
     group by moves.container_id`)

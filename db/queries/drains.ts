@@ -143,6 +143,28 @@ export async function listDrainsAround(
     )
 }
 
+/** Litres that stand for a drain in each container it was poured into, by container; empty for a drain not saved. */
+export async function listPouredByDrain(tx: Transaction, drainId: string) {
+  const rows = await tx
+    .select({
+      containerId: accounts.containerId,
+      litres: sql<string>`sum(case when ${movements.toAccountId} = ${accounts.id} then ${movements.litres}
+        else -${movements.litres} end)::text`,
+    })
+    .from(movements)
+    .innerJoin(
+      accounts,
+      sql`${accounts.id} in (${movements.fromAccountId}, ${movements.toAccountId})`,
+    )
+    .where(and(eq(movements.drainId, drainId), eq(accounts.kind, 'container')))
+    .groupBy(accounts.containerId)
+  return new Map(
+    rows.flatMap(({ containerId, litres }) =>
+      containerId === null ? [] : [[containerId, litres] as const],
+    ),
+  )
+}
+
 export type DrainFilter = {
   siteIds: readonly string[] | null
   machineId?: string | undefined

@@ -109,9 +109,13 @@ const derivations = {
         and number like 'D-' || lpad((s.year % 100)::text, 2, '0') || '-%'
       union all
       select number from pickups where s.kind = 'pickup' and site_id = s.scope_id
-        and number like '%-' || lpad((s.year % 100)::text, 2, '0') || '-%-_'
+        and number ~ ('-' || lpad((s.year % 100)::text, 2, '0') || '-[0-9]+-.$')
     ) n on true
     group by s.scope_id, s.kind, s.year, s.last having count(n.number) <> s.last`,
+  'book-missing': sql`
+    select count(*) || ' lines of site ' || m.site_id || ' stand in no book' as detail
+    from movements m left join books b on b.site_id = m.site_id
+    where b.site_id is null group by m.site_id`,
   'signed-out-does-not-sum': sql`
     select p.number || ': line ' || l.position as detail
     from pickups p join pickup_lines l on l.pickup_id = p.id and not l.removed

@@ -1,11 +1,16 @@
 import { and, eq, isNull } from 'drizzle-orm'
 import type { Transaction } from '@/db/client'
+import { lockBook } from '@/db/queries/book'
 import { containers, holds } from '@/db/schema/sites'
 import { demand, type ActContext } from '../act-context'
 import { writeAudit } from '../audit/write-audit'
 import { problem } from '../problem'
 
-/** Holds a container: nothing in, nothing out. @throws Problem not-found, already-held, id-reused */
+/**
+ * Holds a container: nothing in, nothing out. The same hold asked for again is held already. Takes its turn in the
+ * site's book, so that no transfer slips past it.
+ * @throws Problem not-found, already-held, id-reused
+ */
 export async function holdContainer(
   tx: Transaction,
   context: ActContext,
@@ -14,6 +19,17 @@ export async function holdContainer(
 ): Promise<void> {
   const container = await getContainer(tx, containerId)
   demand(context, 'hold-container', { siteId: container.siteId })
+  await lockBook(tx, container.siteId)
+  const [before] = await tx.select().from(holds).where(eq(holds.id, body.id)).limit(1)
+  if (before !== undefined) {
+    const isSame =
+      before.containerId === containerId &&
+      before.heldBy === context.person.id &&
+      before.reason === body.reason &&
+      before.halogensPpm === body.halogensPpm
+    if (!isSame) throw problem('id-reused')
+    return
+  }
   await tx.insert(holds).values({
     ...body,
     organisationId: context.person.organisationId,
@@ -40,6 +56,7 @@ export async function releaseContainer(
 ): Promise<void> {
   const container = await getContainer(tx, containerId)
   demand(context, 'release-container', { siteId: container.siteId })
+  await lockBook(tx, container.siteId)
   const released = await tx
     .update(holds)
     .set({ releasedBy: context.person.id, releasedAt: context.clock(), releaseNote: note })

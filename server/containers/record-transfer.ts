@@ -1,9 +1,11 @@
 import { eq } from 'drizzle-orm'
 import type { z } from 'zod'
 import type { Transaction } from '@/db/client'
+import { lockBook } from '@/db/queries/book'
 import { listContainersOfLegs } from '@/db/queries/drains'
 import { transfers } from '@/db/schema/drains'
 import type { recordTransferBody } from '@/shared/contracts/containers'
+import { containerQuestionsOf } from '@/shared/drain-questions'
 import { toLitres } from '@/shared/quantities/convert'
 import { isEstimate, spreadOf } from '@/shared/quantities/methods'
 import { demand, type ActContext } from '../act-context'
@@ -11,7 +13,8 @@ import { writeAudit } from '../audit/write-audit'
 import { accountOf } from '../book/account-of'
 import { postMovements } from '../book/post-movements'
 import { contentHash } from '../content-hash'
-import { markBelowZero } from '../drains/raise-marks'
+import { presentInQuestion } from '../drains/present-in-question'
+import { markBelowZero, raiseContainerMarks } from '../drains/raise-marks'
 import { evaluateSiteLimits } from '../limits/evaluate-site-limits'
 import { fieldProblem, problem } from '../problem'
 import { getSite } from '../sites-seen'
@@ -19,9 +22,9 @@ import { getSite } from '../sites-seen'
 const futureAllowance = 5 * 60_000
 
 /**
- * Moves fluid from one container to another of the same site. Unlike a drain this is an act not yet done: a held
- * container refuses it.
- * @throws Problem id-reused, same-container, wrong-site, container-held, time-in-future, not-found
+ * Moves fluid from one container to another of the same site. Unlike a drain this is an act not yet done: a held or
+ * retired container refuses it. Over the line or into another stream is marked.
+ * @throws Problem id-reused, same-container, wrong-site, container-held, retired, time-in-future, not-found
  */
 export async function recordTransfer(
   tx: Transaction,
@@ -29,6 +32,8 @@ export async function recordTransfer(
   body: z.output<typeof recordTransferBody>,
 ): Promise<{ isRepeated: boolean; recordedAt: Date }> {
   const hash = contentHash(body)
+  // Before anything is read: a hold, a retirement and a retry are seen, or wait for this to end.
+  await lockBook(tx, body.siteId)
   const [before] = await tx.select().from(transfers).where(eq(transfers.id, body.id)).limit(1)
   if (before !== undefined) {
     if (before.contentHash !== hash || before.recordedBy !== context.person.id)
@@ -64,10 +69,19 @@ export async function recordTransfer(
         facts: { container: one.container.code, reason: one.hold.reason },
       })
     }
-    return one.container
+    if (one.container.retiredAt !== null)
+      throw fieldProblem('retired', field, 'retired', 'Choose another container')
+    return one
   }
-  const from = at(body.fromContainerId, 'fromContainerId')
-  const to = at(body.toContainerId, 'toContainerId')
+  const source = at(body.fromContainerId, 'fromContainerId')
+  const target = at(body.toContainerId, 'toContainerId')
+  const { container: from } = source
+  const { container: to } = target
+  const litres = toLitres(body.volume.value, body.volume.unit)
+  const questions = containerQuestionsOf(
+    { streamId: from.streamId, streamName: source.streamName },
+    { container: presentInQuestion(target), litres },
+  )
   const recordedAt = context.clock()
   await tx.insert(transfers).values({
     id: body.id,
@@ -86,7 +100,7 @@ export async function recordTransfer(
         containerId: from.id,
       }),
       toAccountId: await accountOf(tx, context, site.id, { kind: 'container', containerId: to.id }),
-      litres: toLitres(body.volume.value, body.volume.unit),
+      litres,
       kilograms: '0',
       pieces: 0,
       enteredValue: body.volume.value,
@@ -100,6 +114,7 @@ export async function recordTransfer(
       note: body.note,
     },
   ])
+  await raiseContainerMarks(tx, context, site.id, questions)
   await markBelowZero(tx, context, site.id, [from.id, to.id])
   await writeAudit(tx, context, {
     act: 'record-transfer',

@@ -1,6 +1,6 @@
 import { and, eq } from 'drizzle-orm'
 import type { Transaction } from '@/db/client'
-import { listStandingMovements } from '@/db/queries/book'
+import { listStandingMovements, lockBook } from '@/db/queries/book'
 import { findDrain } from '@/db/queries/drains'
 import { drainRevisions, drains } from '@/db/schema/drains'
 import { localDay } from '@/shared/calendar'
@@ -14,7 +14,7 @@ import { problem } from '../problem'
 import { getSite } from '../sites-seen'
 import { askQuestions } from './ask-questions'
 import { postDrain } from './post-drain'
-import { closeDrainMarks, markBelowZero, raiseDrainMarks } from './raise-marks'
+import { markBelowZero, renewDrainMarks } from './raise-marks'
 import { drainColumns } from './record-drain'
 import { resolveDrain } from './resolve-drain'
 
@@ -34,6 +34,7 @@ export async function amendDrain(
   demand(context, 'amend-drain', { siteId: before.siteId })
   if (before.state === 'struck') throw problem('already-struck')
   const site = await getSite(tx, context, before.siteId)
+  await lockBook(tx, site.id)
   const facts = drainFacts.strip().parse(body)
   const revision = body.expectedRevision + 1
   const [taken] = await tx
@@ -69,8 +70,14 @@ export async function amendDrain(
     madeAt: context.clock(),
   })
   await postDrain(tx, context, { id, revision }, resolved)
-  await closeDrainMarks(tx, context, id, `Amended to revision ${revision}`)
-  await raiseDrainMarks(tx, context, { id, siteId: site.id }, questions, body.answers)
+  await renewDrainMarks(
+    tx,
+    context,
+    { id, siteId: site.id },
+    questions,
+    body.answers,
+    `Amended to revision ${revision}`,
+  )
   const touched = [
     ...(await containersOfMovements(tx, old)),
     ...body.legs.map(({ containerId }) => containerId),

@@ -1,17 +1,21 @@
 import type { Transaction } from '@/db/client'
 import { listDrainsAround } from '@/db/queries/drains'
+import { subtract } from '@/shared/quantities/decimals'
 import { questionsOf, type DrainQuestion } from '@/shared/drain-questions'
+import { presentInQuestion } from './present-in-question'
 import type { ResolvedDrain } from './resolve-drain'
 
 const twoHours = 2 * 3_600_000
 
 /**
  * What a drain raises, against the containers as they stand before it.
+ * @param poured litres by container that stand for this very drain already: they are not there before it
  */
 export async function askQuestions(
   tx: Transaction,
   drainId: string,
   resolved: ResolvedDrain,
+  poured: ReadonlyMap<string, string> = new Map(),
 ): Promise<DrainQuestion[]> {
   const { machine, occurredAt } = resolved
   const around =
@@ -41,20 +45,11 @@ export async function askQuestions(
               reservoirLitres: machine.reservoirLitres,
               systemLitres: machine.systemLitres,
             },
-      legs: resolved.legs.map(({ litres, of }) => ({
-        litres,
-        container: {
-          id: of.container.id,
-          code: of.container.code,
-          streamId: of.container.streamId,
-          streamName: of.streamName,
-          litres: of.litres,
-          fillLineLitres: of.container.fillLineLitres,
-          isHeld: of.hold !== null,
-          holdReason: of.hold?.reason ?? '',
-          isRetired: of.container.retiredAt !== null,
-        },
-      })),
+      legs: resolved.legs.map(({ litres, of }) => {
+        const container = presentInQuestion(of)
+        const before = subtract(container.litres, poured.get(container.id) ?? '0')
+        return { litres, container: { ...container, litres: before } }
+      }),
     },
     around.map((other) => ({ ...other, occurredAt: other.occurredAt.toISOString() })),
   )

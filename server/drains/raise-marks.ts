@@ -8,19 +8,86 @@ import type { ActContext } from '../act-context'
 
 type Raised = { code: string; containerId: string | null; details: Record<string, string> }
 
+type Answers = readonly { code: string; answer: string }[]
+
 /** Marks a drain with what it raised and what was answered; a question about a container marks that as well. */
 export async function raiseDrainMarks(
   tx: Transaction,
   context: ActContext,
   drain: { id: string; siteId: string },
   questions: readonly DrainQuestion[],
-  answers: readonly { code: string; answer: string }[],
+  answers: Answers,
 ): Promise<void> {
-  const raised: Raised[] = questions.map(({ code, containerId, facts }) => {
-    const answer = answers.find((given) => given.code === code)?.answer
-    return { code, containerId, details: answer === undefined ? facts : { ...facts, answer } }
-  })
+  const raised = questions.map((question) => raisedBy(question, answers))
   await insertMarks(tx, context, drain.siteId, drain.id, raised)
+}
+
+/** Marks a container with what a transfer into it raised. */
+export async function raiseContainerMarks(
+  tx: Transaction,
+  context: ActContext,
+  siteId: string,
+  questions: readonly DrainQuestion[],
+): Promise<void> {
+  const raised = questions.map((question) => raisedBy(question, []))
+  await insertMarks(tx, context, siteId, null, raised)
+}
+
+/**
+ * What a later revision of a drain raises: a mark with the same facts stays as it is, whether it is open or was
+ * looked at; an open one that no longer holds is closed with a note; what is new is raised.
+ */
+export async function renewDrainMarks(
+  tx: Transaction,
+  context: ActContext,
+  drain: { id: string; siteId: string },
+  questions: readonly DrainQuestion[],
+  answers: Answers,
+  note: string,
+): Promise<void> {
+  const before = await tx.select().from(marks).where(eq(marks.drainId, drain.id))
+  const raised = questions.map((question) => {
+    const sameQuestion = before.filter((mark) => keyOf(mark) === keyOf(question))
+    const said = sameQuestion.flatMap(({ details }) => details.answer ?? []).at(-1)
+    const earlier = said === undefined ? [] : [{ code: question.code, answer: said }]
+    return {
+      ...raisedBy(question, [...answers, ...earlier]),
+      isKnown: sameQuestion.some(({ details }) => factsKey(details) === factsKey(question.facts)),
+    }
+  })
+  const holds = new Set(
+    questions.map((question) => `${keyOf(question)} ${factsKey(question.facts)}`),
+  )
+  const gone = before.filter(
+    (mark) => mark.reviewedAt === null && !holds.has(`${keyOf(mark)} ${factsKey(mark.details)}`),
+  )
+  await closeMarks(
+    tx,
+    context,
+    gone.map(({ id }) => id),
+    note,
+  )
+  await insertMarks(
+    tx,
+    context,
+    drain.siteId,
+    drain.id,
+    raised.filter(({ isKnown }) => !isKnown),
+  )
+}
+
+function raisedBy({ code, containerId, facts }: DrainQuestion, answers: Answers): Raised {
+  const answer = answers.find((given) => given.code === code)?.answer
+  return { code, containerId, details: answer === undefined ? facts : { ...facts, answer } }
+}
+
+/** What is asked about; the figures of it are in the facts. */
+function keyOf({ code, containerId }: { code: string; containerId: string | null }): string {
+  return `${code} ${containerId ?? ''}`
+}
+
+function factsKey({ answer: _, ...facts }: Record<string, string>): string {
+  return JSON.stringify(Object.entries(facts).sort(([a], [b]) => (a < b ? -1 : 1)))
 }
 
 /**
@@ -69,7 +136,7 @@ export async function markBelowZero(
   await closeMarks(tx, context, mended, 'The book is above zero again')
 }
 
-/** Closes what a later revision of the drain no longer raises; what it raises again is raised anew. */
+/** Closes all open marks of a drain: it was struck out. */
 export async function closeDrainMarks(
   tx: Transaction,
   context: ActContext,

@@ -1,4 +1,5 @@
 import type { Transaction } from '@/db/client'
+import { lockBook } from '@/db/queries/book'
 import { findDrain, takeNumber } from '@/db/queries/drains'
 import { drainRevisions, drains } from '@/db/schema/drains'
 import { localDay, yearOf } from '@/shared/calendar'
@@ -28,6 +29,8 @@ export async function recordDrain(
   body: RecordDrainBody,
 ): Promise<{ id: string; isRepeated: boolean }> {
   const hash = contentHash(body)
+  // Before anything is read: two who pour into one drum take turns, and a retry finds what it repeats.
+  await lockBook(tx, body.siteId)
   const before = await findDrain(tx, { id: body.id })
   if (before !== undefined) {
     if (before.contentHash !== hash || before.recordedBy !== context.person.id)

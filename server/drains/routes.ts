@@ -1,5 +1,10 @@
 import { Router } from 'express'
-import { findDrain, listDrainRecords, listMarkRecords } from '@/db/queries/drains'
+import {
+  findDrain,
+  listDrainRecords,
+  listMarkRecords,
+  listPouredByDrain,
+} from '@/db/queries/drains'
 import * as contracts from '@/shared/contracts/drains'
 import { demand } from '../act-context'
 import type { AppServices } from '../app-services'
@@ -45,8 +50,10 @@ export function drainRoutes(services: AppServices): Router {
     demand(context, 'record-drain', { siteId: body.siteId })
     const site = await getSite(tx, context, body.siteId)
     const facts = contracts.drainFacts.strip().parse(body)
-    const questions = await askQuestions(tx, body.id, await resolveDrain(tx, context, site, facts))
-    return { questions }
+    const resolved = await resolveDrain(tx, context, site, facts)
+    // A phone that lost the answer asks about a drain that is saved already.
+    const poured = await listPouredByDrain(tx, body.id)
+    return { questions: await askQuestions(tx, body.id, resolved, poured) }
   })
 
   serve(router, services, contracts.recordDrain, async (tx, context, { body, repeated }) => {

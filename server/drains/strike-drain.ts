@@ -1,6 +1,6 @@
 import { and, eq } from 'drizzle-orm'
 import type { Transaction } from '@/db/client'
-import { listStandingMovements } from '@/db/queries/book'
+import { listStandingMovements, lockBook } from '@/db/queries/book'
 import { findDrain, listRevisions } from '@/db/queries/drains'
 import { drainRevisions, drains } from '@/db/schema/drains'
 import { demand, type ActContext } from '../act-context'
@@ -25,6 +25,7 @@ export async function strikeDrain(
   if (before === undefined) throw problem('not-found')
   demand(context, 'strike-drain', { siteId: before.siteId })
   if (before.state === 'struck') throw problem('already-struck')
+  await lockBook(tx, before.siteId)
   const revision = body.expectedRevision + 1
   const [taken] = await tx
     .update(drains)

@@ -1,7 +1,7 @@
 import { z } from 'zod'
 import { problem } from '../problem'
 
-const keys = z.object({ at: z.string().max(60), id: z.string().max(60) })
+const keys = z.object({ at: z.iso.datetime(), id: z.uuid() })
 export type Cursor = z.infer<typeof keys>
 
 /** Where a page ended, as an opaque word: the keys of its last row. */

@@ -1,6 +1,7 @@
 import { and, eq, isNull, ne, or, sql } from 'drizzle-orm'
 import type { z } from 'zod'
 import type { Transaction } from '@/db/client'
+import { lockBook } from '@/db/queries/book'
 import { accounts, balances, books, movements } from '@/db/schema/book'
 import { people } from '@/db/schema/organisations'
 import { containers, fluids, machines, parties, sites, streams } from '@/db/schema/sites'
@@ -159,6 +160,8 @@ export const containerKind: SetUpKind<typeof containers, ContainerBody> = {
   columns: async (tx, _, body, before) => {
     await mustExist(tx, sites, body.siteId, 'siteId')
     await mustExist(tx, streams, body.streamId, 'streamId')
+    // What is poured meanwhile waits, or is seen.
+    if (before !== undefined) await lockBook(tx, before.siteId)
     if (
       before !== undefined &&
       before.siteId !== body.siteId &&
@@ -184,6 +187,7 @@ export const containerKind: SetUpKind<typeof containers, ContainerBody> = {
     }
   },
   beforeRetire: async (tx, _, container) => {
+    await lockBook(tx, container.siteId)
     if (!(await isEmpty(tx, container.id))) {
       throw inUse('It is not empty in the book. Ship or transfer what is in it first.')
     }

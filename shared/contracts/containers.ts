@@ -185,6 +185,7 @@ export const recordTransfer = defineContract({
     'wrong-site',
     'same-container',
     'container-held',
+    'retired',
     'time-in-future',
   ],
 })
