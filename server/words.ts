@@ -6,7 +6,6 @@ const instance = createInstance({
   fallbackLng: 'en',
   resources: { en: { translation: catalogue.en } },
   interpolation: { escapeValue: false },
-  showSupportNotice: false,
 })
 void instance.init({ initAsync: false })
 

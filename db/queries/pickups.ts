@@ -1,5 +1,6 @@
-import { and, asc, desc, eq, inArray, lt, ne, or, sql } from 'drizzle-orm'
-import { alias } from 'drizzle-orm/pg-core'
+import { and, asc, desc, eq, gte, inArray, lt, ne, not, or, sql, type SQL } from 'drizzle-orm'
+import { alias, type AnyPgColumn } from 'drizzle-orm/pg-core'
+import type { PickupStage } from '@/shared/pickup-stages'
 import type { Transaction } from '../client'
 import { accounts, balances } from '../schema/book'
 import { organisations, people } from '../schema/organisations'
@@ -21,11 +22,12 @@ export async function findPickup(tx: Transaction, by: { id: string } | { number:
   return found
 }
 
+/** Pickups of sites, newest first; of one stage as it is shown at an instant. */
 export async function listPickupRecords(
   tx: Transaction,
   filter: {
     siteIds: readonly string[] | null
-    stages?: readonly PickupRecord['stage'][] | undefined
+    shown?: { stage: PickupStage; at: Date } | undefined
     before?: { at: Date; id: string } | undefined
     limit: number
   },
@@ -34,7 +36,7 @@ export async function listPickupRecords(
     .where(
       and(
         ofSites(pickups.siteId, filter.siteIds),
-        filter.stages === undefined ? undefined : inArray(pickups.stage, [...filter.stages]),
+        filter.shown && isShownAs(filter.shown.stage, filter.shown.at),
         filter.before === undefined
           ? undefined
           : or(
@@ -47,10 +49,18 @@ export async function listPickupRecords(
     .limit(filter.limit)
 }
 
+/** `shownStage` of shared/pickup-stages.ts as a condition: a site's own day decides whether a return is due. */
+function isShownAs(stage: PickupStage, at: Date): SQL | undefined {
+  if (stage !== 'signed-out' && stage !== 'return-due') return eq(pickups.stage, stage)
+  const isDue = sql`(${pickups.receivedAt} is null and ${pickups.returnDueOn} is not null
+    and ${pickups.returnDueOn} < (${at.toISOString()}::timestamptz at time zone ${sites.timeZone})::date)`
+  return and(eq(pickups.stage, 'signed-out'), stage === 'return-due' ? isDue : not(isDue))
+}
+
 function pickupsWithNames(tx: Transaction) {
   const hauler = alias(parties, 'hauler')
   const facility = alias(parties, 'facility')
-  const nameOf = (column: typeof pickups.createdBy | typeof pickups.issuedBy) =>
+  const nameOf = (column: AnyPgColumn) =>
     sql<string | null>`(select ${people.name} from ${people} where ${people.id} = ${column})`
   return tx
     .select({
@@ -191,7 +201,10 @@ export async function findOrganisation(tx: Transaction) {
   return found
 }
 
-/** A document of any organisation by the hash of its bytes or of its facts: what a stranger with the paper asks. */
+/**
+ * A document of any organisation by the hash of its bytes, the hash of its facts, or the first 16 characters of that
+ * hash (the code printed on it): what a stranger with the paper asks.
+ */
 export async function findDocumentByHash(tx: Transaction, hash: string) {
   const [found] = await tx
     .select({
@@ -210,7 +223,12 @@ export async function findDocumentByHash(tx: Transaction, hash: string) {
     .innerJoin(pickups, eq(pickups.id, documents.pickupId))
     .innerJoin(sites, eq(sites.id, pickups.siteId))
     .innerJoin(organisations, eq(organisations.id, documents.organisationId))
-    .where(or(eq(documents.sha256, hash), eq(documents.factsSha256, hash)))
+    .where(
+      hash.length === 64
+        ? or(eq(documents.sha256, hash), eq(documents.factsSha256, hash))
+        : // A range, which the index answers in any collation; 'g' follows every hexadecimal digit.
+          and(gte(documents.factsSha256, hash), lt(documents.factsSha256, `${hash}g`)),
+    )
     .limit(1)
   return found
 }

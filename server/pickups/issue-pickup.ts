@@ -1,5 +1,6 @@
 import { and, eq } from 'drizzle-orm'
 import type { Transaction } from '@/db/client'
+import { lockBook } from '@/db/queries/book'
 import { takeNumber } from '@/db/queries/drains'
 import { listHaulersWithPermit, listPickupLines } from '@/db/queries/pickups'
 import { pickups } from '@/db/schema/pickups'
@@ -26,17 +27,19 @@ export async function issuePickup(
 ): Promise<void> {
   const found = await getPickup(tx, context, 'issue-pickup', id)
   demandStep(found, 'issue', version)
+  // Takes its turn in the site's book, so that no hold and no other issue of the same container slips past it.
+  await lockBook(tx, found.site.id)
   const lines = await listPickupLines(tx, [id])
   const missing = await missingItems(tx, found, lines)
-  const expired = missing.find(({ code }) => code === 'permit-expired' || code === 'permit-missing')
+  const expired = missing.find(({ code }) => code === 'permit-expired')
   if (expired !== undefined && found.hauler !== null) {
     const others = await listHaulersWithPermit(tx, found.pickup.plannedOn, found.hauler.id)
     throw problem('permit-expired', {
       facts: {
         party: found.hauler.name,
         phone: found.hauler.phone,
-        number: expired.facts['number'] ?? '–',
-        endedOn: expired.facts['endedOn'] ?? '–',
+        number: expired.facts.number ?? '',
+        endedOn: expired.facts.endedOn ?? '',
         plannedOn: found.pickup.plannedOn,
         others: others.map(({ name }) => name).join(', '),
       },

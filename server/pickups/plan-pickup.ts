@@ -27,13 +27,13 @@ export async function planPickup(
   context: ActContext,
   body: PlanPickupBody,
 ): Promise<{ isRepeated: boolean }> {
+  demand(context, 'plan-pickup', { siteId: body.siteId })
   const hash = contentHash(body)
   const [before] = await tx.select().from(pickups).where(eq(pickups.id, body.id)).limit(1)
   if (before !== undefined) {
     if (before.contentHash !== hash) throw problem('id-reused')
     return { isRepeated: true }
   }
-  demand(context, 'plan-pickup', { siteId: body.siteId })
   const site = await getSite(tx, context, body.siteId)
   if (site.retiredAt !== null) throw problem('retired')
   await checkParties(tx, body)

@@ -82,11 +82,7 @@ export async function receivePickup(
   await reverseMovements(tx, context, site.id, old, 'Received quantities entered again')
   const from = await accountOf(tx, context, site.id, { kind: 'hauler', partyId: hauler.id })
   const to = await accountOf(tx, context, site.id, { kind: 'facility', partyId: facility.id })
-  // Noon of the day: the weigh ticket names a day, and noon is that day in every season.
-  const occurredAt = earlier(
-    new Date(instantFromLocal(`${body.receivedOn}T12:00`, site.timeZone).instant),
-    context.clock(),
-  )
+  const occurredAt = receivedAt(body.receivedOn, site.timeZone, pickup.signedOutAt, context.clock())
   const drafts: MovementDraft[] = []
   for (const { line, given, litres, kilograms, pieces, density } of received) {
     await tx
@@ -160,8 +156,14 @@ export async function receivePickup(
   })
 }
 
-function earlier(a: Date, b: Date): Date {
-  return a < b ? a : b
+/**
+ * The weigh ticket names a day; noon is that day in every season. On the day it left: not before it left, and never
+ * later than now.
+ */
+function receivedAt(day: string, zone: string, leftAt: Date | null, now: Date): Date {
+  const noon = new Date(instantFromLocal(`${day}T12:00`, zone).instant)
+  const afterLeaving = leftAt !== null && leftAt > noon ? leftAt : noon
+  return afterLeaving < now ? afterLeaving : now
 }
 
 /** Litres of a fluid (a weighed one through its density, rounded once to a millionth), kilograms of a solid. */

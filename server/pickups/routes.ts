@@ -1,7 +1,6 @@
 import { Router } from 'express'
 import { findPickup, listPickupRecords } from '@/db/queries/pickups'
 import * as contracts from '@/shared/contracts/pickups'
-import type { PickupStage, StoredPickupStage } from '@/shared/pickup-stages'
 import { demand } from '../act-context'
 import type { AppServices } from '../app-services'
 import { pageOf, readCursor } from '../http/cursor'
@@ -23,7 +22,7 @@ export function pickupRoutes(services: AppServices): Router {
     const cursor = readCursor(query.cursor)
     const found = await listPickupRecords(tx, {
       siteIds: sitesSeen(context, query.siteId),
-      stages: query.stage === undefined ? undefined : [storedStage(query.stage)],
+      shown: query.stage && { stage: query.stage, at: context.clock() },
       before: cursor && { at: new Date(cursor.at), id: cursor.id },
       limit: query.limit + 1,
     })
@@ -31,12 +30,7 @@ export function pickupRoutes(services: AppServices): Router {
       at: pickup.createdAt.toISOString(),
       id: pickup.id,
     }))
-    const shown = await presentPickupRows(tx, rows, context.clock())
-    // Signed out and return due are one stored stage that the clock tells apart.
-    return {
-      rows: query.stage === undefined ? shown : shown.filter(({ stage }) => stage === query.stage),
-      next,
-    }
+    return { rows: await presentPickupRows(tx, rows, context.clock()), next }
   })
 
   serve(router, services, contracts.readPickup, async (tx, context, { params }) => {
@@ -86,8 +80,4 @@ export function pickupRoutes(services: AppServices): Router {
     return presentPickup(tx, params.id, context.clock())
   })
   return router
-}
-
-function storedStage(stage: PickupStage): StoredPickupStage {
-  return stage === 'return-due' ? 'signed-out' : stage
 }

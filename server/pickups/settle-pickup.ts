@@ -40,7 +40,8 @@ export async function settlePickup(
   }
   const hauling = await accountOf(tx, context, site.id, { kind: 'hauler', partyId: hauler.id })
   const adjusting = await accountOf(tx, context, site.id, { kind: 'adjustment' })
-  const drafts = (await listPickupLines(tx, [id])).flatMap(({ line }): MovementDraft[] => {
+  const drafts = (await listPickupLines(tx, [id])).flatMap(({ line, stream }): MovementDraft[] => {
+    const isSolid = stream.kind === 'solid'
     // Each measure by itself: a line may have lost kilograms and gained a piece.
     const left = {
       litres: subtract(line.shippedLitres, line.receivedLitres ?? '0'),
@@ -57,11 +58,12 @@ export async function settlePickup(
         litres: part(left.litres),
         kilograms: part(left.kilograms),
         pieces: Number(part(left.pieces)),
-        enteredValue: part(left.litres),
-        enteredUnit: 'L',
+        // Nobody typed this figure: it is what the two typed ones leave over, an estimate when one of them was.
+        enteredValue: part(isSolid ? left.kilograms : left.litres),
+        enteredUnit: isSolid ? 'kg' : 'L',
         method: body.cause,
         spreadPercent: null,
-        isEstimate: false,
+        isEstimate: line.receivedMethod === 'estimate' || line.receivedDensity !== null,
         reason: 'adjustment',
         pickupId: id,
         pickupLineId: line.id,

@@ -1,5 +1,6 @@
 import { and, eq, inArray } from 'drizzle-orm'
 import type { Transaction } from '@/db/client'
+import { lockBook } from '@/db/queries/book'
 import { listDocuments, listPickupLines, listSignatures } from '@/db/queries/pickups'
 import { pickups, signatures } from '@/db/schema/pickups'
 import { addDays, localDay, offsetOf } from '@/shared/calendar'
@@ -21,7 +22,7 @@ import { makeDocument } from './make-document'
  * Takes one party's signature on the document that was read. When both have signed, the fluid has left: each line
  * moves from its container to the hauler.
  * @returns whether this signature was there already
- * @throws Problem document-changed, already-signed, wrong-stage, changed-under-you, id-reused
+ * @throws Problem document-changed, container-held, already-signed, wrong-stage, changed-under-you, id-reused
  */
 export async function signPickup(
   tx: Transaction,
@@ -41,6 +42,15 @@ export async function signPickup(
   const [newest] = await listDocuments(tx, id)
   if (newest === undefined || newest.sha256 !== body.documentSha256)
     throw problem('document-changed')
+  // Nothing leaves a held container, also when it was held after the manifest was issued.
+  await lockBook(tx, found.site.id)
+  const lines = await listPickupLines(tx, [id])
+  const held = lines.find(({ holdReason }) => holdReason !== null)
+  if (held !== undefined) {
+    throw problem('container-held', {
+      facts: { container: held.container.code, reason: held.holdReason ?? '' },
+    })
+  }
   const now = context.clock()
   await tx.insert(signatures).values({
     id: body.id,
@@ -85,7 +95,7 @@ export async function signPickup(
     details: { party: body.party, name: body.name, document: body.documentSha256 },
   })
   if (isComplete) {
-    await shipLines(tx, context, found)
+    await shipLines(tx, context, found, lines)
     const document = await makeDocument(tx, context, id, 'signed-manifest')
     await mailDocument(tx, context, id, document.id, 'signed')
     await evaluateSiteLimits(tx, context, found.site.id)
@@ -93,10 +103,14 @@ export async function signPickup(
   return { isRepeated: false }
 }
 
-async function shipLines(tx: Transaction, context: ActContext, found: FoundPickup): Promise<void> {
+async function shipLines(
+  tx: Transaction,
+  context: ActContext,
+  found: FoundPickup,
+  lines: Awaited<ReturnType<typeof listPickupLines>>,
+): Promise<void> {
   const { pickup, site, hauler } = found
   if (hauler === null) throw problem('pickup-incomplete')
-  const lines = await listPickupLines(tx, [pickup.id])
   const toAccountId = await accountOf(tx, context, site.id, { kind: 'hauler', partyId: hauler.id })
   const drafts: MovementDraft[] = []
   for (const { line, container } of lines) {

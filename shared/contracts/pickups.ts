@@ -102,7 +102,10 @@ export const pickupLine = z.object({
 })
 
 export const missingItem = z.object({
-  /** no-hauler, no-facility, permit-missing, container-held, container-elsewhere, nothing-in-container, ... */
+  /**
+   * no-hauler, no-facility, party-retired, permit-missing, permit-expired, no-lines, container-held,
+   * container-elsewhere or nothing-in-container
+   */
   code: z.string(),
   facts: z.record(z.string(), z.string()),
 })
@@ -288,6 +291,7 @@ export const signPickup = defineContract({
     'changed-under-you',
     'wrong-stage',
     'document-changed',
+    'container-held',
     'already-signed',
     'id-reused',
   ],
@@ -385,15 +389,19 @@ export const readDocument = defineContract({
   problems: ['ticket-expired', 'not-found'],
 })
 
-/** Anyone with the paper in hand: does this hash belong to a document of the book? Tells nothing the paper does not. */
+/**
+ * Anyone with the paper in hand: is there such a document in the book? Asked by the SHA-256 of the file, by the hash in
+ * the paper's QR code (of the facts it was drawn from), or by that hash's first 16 characters, which the paper prints
+ * for typing. Tells nothing that the paper does not, but whether it still stands.
+ */
 export const verifyDocument = defineContract({
   name: 'verifyDocument',
   method: 'get',
   path: '/verify/:hash',
-  summary: 'Is this hash that of an issued document',
+  summary: 'Is this hash, or printed code, that of an issued document',
   tag,
   access: 'public',
-  params: z.strictObject({ hash: z.string().regex(/^[0-9a-f]{64}$/) }),
+  params: z.strictObject({ hash: z.string().regex(/^([0-9a-f]{16}|[0-9a-f]{64})$/) }),
   reply: z.object({
     matches: z.boolean(),
     number: z.string().nullable(),
