@@ -5,6 +5,7 @@ import {
   divide,
   isPositive,
   multiply,
+  normalise,
   subtract,
 } from './quantities/decimals'
 
@@ -168,7 +169,7 @@ function overMachine(drain: DrainInQuestion): DrainQuestion[] {
     {
       code: 'more-than-machine-holds',
       containerId: null,
-      facts: { machine: machine.code, holdsLitres: holds, typedLitres: drain.litres },
+      facts: { machine: machine.code, holdsLitres: normalise(holds), typedLitres: drain.litres },
     },
   ]
 }
@@ -194,7 +195,7 @@ function lookAlikes(drain: DrainInQuestion, recent: readonly RecordedDrain[]): D
       facts: {
         number: other.number,
         by: other.by,
-        otherLitres: other.litres,
+        otherLitres: normalise(other.litres),
         otherAt: other.occurredAt,
         otherId: other.id,
       },

@@ -4,6 +4,7 @@ import { accounts, balances } from '@/db/schema/book'
 import { marks } from '@/db/schema/drains'
 import { containers } from '@/db/schema/sites'
 import type { DrainQuestion } from '@/shared/drain-questions'
+import { normalise } from '@/shared/quantities/decimals'
 import type { ActContext } from '../act-context'
 
 type Raised = { code: string; containerId: string | null; details: Record<string, string> }
@@ -127,7 +128,7 @@ export async function markBelowZero(
     below.map(({ id, code, litres }) => ({
       code: 'balance-below-zero',
       containerId: id,
-      details: { container: code, bookLitres: litres },
+      details: { container: code, bookLitres: normalise(litres) },
     })),
   )
   const mended = found.flatMap(({ isBelow, markId }) =>
