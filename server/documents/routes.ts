@@ -57,7 +57,7 @@ export function documentRoutes(services: AppServices): Router {
     // The browser's own viewer draws the PDF in its frame and styles it: nothing else may run here.
     response.set(
       'Content-Security-Policy',
-      "default-src 'none'; style-src 'unsafe-inline'; object-src 'self'; plugin-types application/pdf",
+      "default-src 'none'; style-src 'unsafe-inline'; object-src 'self'; frame-ancestors 'self'; base-uri 'none'; form-action 'none'",
     )
     return {
       bytes: found.bytes,

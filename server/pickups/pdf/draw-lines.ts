@@ -14,15 +14,16 @@ type Column = {
 
 const columns: Column[] = [
   { key: 'position', share: 0.06, isFigure: false, text: (line) => String(line.position) },
-  { key: 'container', share: 0.23, isFigure: false, text: containerText },
-  { key: 'stream', share: 0.29, isFigure: false, text: streamText },
+  { key: 'container', share: 0.22, isFigure: false, text: containerText },
+  { key: 'stream', share: 0.27, isFigure: false, text: streamText },
   { key: 'count', share: 0.08, isFigure: true, text: (line) => String(line.containerCount) },
-  { key: 'quantity', share: 0.16, isFigure: true, text: quantityText },
+  { key: 'quantity', share: 0.19, isFigure: true, text: quantityText },
   { key: 'mass', share: 0.18, isFigure: true, text: massText },
 ]
 
 const size = 9.5
-const padding = 4
+const padding = 3
+const gap = 8
 
 /** The table of lines: any number of them, with the heading again on every page. */
 export function drawLines(pen: PdfPen, facts: ManifestFacts): void {
@@ -53,14 +54,8 @@ function drawHead(pen: PdfPen): void {
 function drawCell(pen: PdfPen, text: string, index: number, isHead = false): void {
   const width = widthAt(pen, index)
   const x = leftOf(pen, index)
-  const face = isHead ? 'bold' : 'text'
-  if (!columns[index]?.isFigure) {
-    pen.block(text, { x, width, y: pen.y - padding, size, face })
-    return
-  }
-  text.split('\n').forEach((line, at) => {
-    pen.line(line, { x, right: x + width, y: pen.y - padding - size - at * size * 1.3, size, face })
-  })
+  const right = columns[index]?.isFigure ? x + width : undefined
+  pen.block(text, { x, width, right, y: pen.y - padding, size, face: isHead ? 'bold' : 'text' })
 }
 
 function leftOf(pen: PdfPen, index: number): number {
@@ -68,7 +63,8 @@ function leftOf(pen: PdfPen, index: number): number {
 }
 
 function widthAt(pen: PdfPen, index: number): number {
-  return (columns[index]?.share ?? 0) * pen.width - 8
+  const isLast = index === columns.length - 1
+  return (columns[index]?.share ?? 0) * pen.width - (isLast ? 0 : gap)
 }
 
 function containerText(line: Line): string {

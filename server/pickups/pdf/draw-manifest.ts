@@ -1,17 +1,19 @@
 import { degrees, PDFDocument, rgb } from 'pdf-lib'
-import { create as createQr } from 'qrcode'
 import { formatDay } from '@/shared/calendar'
 import { formatFigure, formatTyped } from '@/shared/quantities/format'
 import { sum } from '@/shared/quantities/decimals'
 import type { Unit } from '@/shared/quantities/units'
 import { say } from '../../words'
 import { drawLines } from './draw-lines'
+import { drawQr, qrSide } from './draw-qr'
 import { drawSignatures } from './draw-signatures'
 import type { ManifestFacts } from './manifest-facts'
 import { shownInstant } from './shown-instant'
 import { embedFaces } from './pdf-fonts'
 import { margin, PdfPen } from './pdf-pen'
 
+/** As many characters of the hash as are printed for typing; `verifyDocument` takes them. */
+const printedCodeLength = 16
 const black = rgb(0, 0, 0)
 
 /**
@@ -51,7 +53,8 @@ export async function drawManifest(
 function startPage(pen: PdfPen, facts: ManifestFacts, isFirst: boolean): void {
   const right = margin + pen.width
   pen.line(say('documents.notAForm'), { x: 0, right, y: pen.y - 8, size: 9, face: 'bold' })
-  pen.line(facts.organisation.name, { x: margin, y: pen.y - 8, size: 9 })
+  const organisation = pen.fit(facts.organisation.name, pen.width - 220, 9)
+  pen.line(organisation, { x: margin, y: pen.y - 8, size: 9 })
   pen.y -= 34
   const title = `${say('documents.title')} · ${say(`documents.subtitle.${facts.kind}`)}`
   pen.line(isFirst ? title : say('documents.continued', { number: facts.number }), {
@@ -83,10 +86,13 @@ function startPage(pen: PdfPen, facts: ManifestFacts, isFirst: boolean): void {
 function stampVoid(pen: PdfPen): void {
   const { width, height } = pen.page.getSize()
   const { main } = pen.faces.heading
-  pen.page.drawText(say('documents.void'), {
-    x: width / 2 - 150,
-    y: height / 2 - 110,
-    size: 150,
+  const [word, size, lean] = [say('documents.void'), 150, (35 * Math.PI) / 180]
+  // The middle of the word (half its length along, a third of its size up) on the middle of the page.
+  const [along, up] = [main.widthOfTextAtSize(word, size) / 2, size / 3]
+  pen.page.drawText(word, {
+    x: width / 2 - along * Math.cos(lean) + up * Math.sin(lean),
+    y: height / 2 - along * Math.sin(lean) - up * Math.cos(lean),
+    size,
     font: main,
     color: rgb(0.82, 0.82, 0.82),
     rotate: degrees(35),
@@ -116,13 +122,8 @@ function drawParties(pen: PdfPen, facts: ManifestFacts): void {
   })
   pen.y -= height + 10
   if (facts.note !== '') {
-    pen.y -=
-      pen.block(`${say('documents.note')}: ${facts.note}`, {
-        x: margin,
-        width: pen.width,
-        y: pen.y,
-        size: 9.5,
-      }) + 6
+    pen.flow(`${say('documents.note')}: ${facts.note}`, 9.5)
+    pen.y -= 6
   }
 }
 
@@ -130,7 +131,7 @@ function siteLines({ organisation, site }: ManifestFacts): string[] {
   return [
     `${organisation.name}, ${site.name} (${site.code})`,
     `${say('documents.identification')}: ${site.identificationNumber || say('documents.none')}`,
-    ...[site.address, site.phone || organisation.phone, organisation.email].filter(
+    ...[addressOf(site.address), site.phone || organisation.phone, organisation.email].filter(
       (line) => line !== '',
     ),
   ]
@@ -140,9 +141,18 @@ function partyLines(party: Omit<ManifestFacts['facility'], never>): string[] {
   return [
     party.name,
     `${say('documents.identification')}: ${party.identificationNumber}`,
-    ...[party.address, party.phone, party.email].filter((line) => line !== ''),
+    ...[addressOf(party.address), party.phone, party.email].filter((line) => line !== ''),
     ...(party.contactName === '' ? [] : [`${say('documents.contact')}: ${party.contactName}`]),
   ]
+}
+
+/** An address as typed, or run on when it would be as tall as a page. */
+function addressOf(typed: string): string {
+  const lines = typed
+    .split('\n')
+    .map((line) => line.trim())
+    .filter((line) => line !== '')
+  return lines.join(lines.length > 5 ? ', ' : '\n')
 }
 
 function haulerLines({ hauler }: ManifestFacts): string[] {
@@ -161,22 +171,19 @@ function drawTotals(pen: PdfPen, facts: ManifestFacts): void {
   const pieces = facts.lines.reduce((total, line) => total + line.pieces, 0)
   if (pieces > 0) figures.push(say('documents.pieces', { count: pieces }))
   const masses = facts.lines.flatMap(({ massKilograms }) => massKilograms ?? [])
-  pen.need(40)
-  pen.line(`${say('documents.total')}: ${figures.join('   ')}`, {
-    x: margin,
-    y: pen.y - 12,
-    face: 'bold',
-  })
+  const text = `${say('documents.total')}: ${figures.join('   ')}`
+  pen.need(pen.heightOf(text, pen.width, 10.5, 'bold') + 24)
+  pen.y -= pen.block(text, { x: margin, width: pen.width, y: pen.y, face: 'bold' })
   if (masses.length > 0) {
     const mass = `${formatFigure(sum(masses), 0, facts.locale)}\u00a0kg`
-    pen.line(`${say('documents.massTotal')}: ${mass}`, {
-      x: 0,
-      right: margin + pen.width,
-      y: pen.y - 12,
+    pen.y -= pen.block(`${say('documents.massTotal')}: ${mass}`, {
+      x: margin,
+      width: pen.width,
+      y: pen.y,
       size: 9.5,
     })
   }
-  pen.y -= 26
+  pen.y -= 8
 }
 
 function drawCautions(pen: PdfPen): void {
@@ -199,30 +206,20 @@ function drawCautions(pen: PdfPen): void {
   pen.y -= 8
 }
 
-/** Page x of y and, on the last page, the code that leads to the check of this paper. */
+/** On every page: page x of y, how to check this paper, and the code that leads there. */
 function drawFooters(pen: PdfPen, facts: ManifestFacts, factsSha256: string): void {
   const pages = pen.pages.length
+  const code = factsSha256.slice(0, printedCodeLength)
+  const width = pen.width - qrSide - 16
+  const check = say('documents.check', { address: `${facts.publicUrl}/verify/${code}` })
   pen.pages.forEach((page, index) => {
-    const text = [
+    const where = [
       say('documents.page', { page: index + 1, pages }),
       facts.number,
-      say('documents.code', { code: factsSha256.slice(0, 16) }),
+      say('documents.revision', { revision: facts.revision }),
     ].join('   ·   ')
-    page.drawText(text, { x: margin, y: 30, size: 8.5, font: pen.faces.text.main, color: black })
-    drawQr(page, `${facts.publicUrl}/verify/${factsSha256}`, margin + pen.width - 50, 22, 50)
+    pen.on(page).line(where, { x: margin, y: 42, size: 8.5 })
+    pen.on(page).line(pen.fit(check, width, 8.5), { x: margin, y: 30, size: 8.5 })
+    drawQr(page, `${facts.publicUrl}/verify/${factsSha256}`, margin + pen.width - qrSide, 22)
   })
-}
-
-function drawQr(page: PdfPen['page'], text: string, x: number, y: number, side: number): void {
-  const { modules } = createQr(text, { errorCorrectionLevel: 'M' })
-  const unit = side / modules.size
-  let path = ''
-  for (let row = 0; row < modules.size; row += 1) {
-    for (let column = 0; column < modules.size; column += 1) {
-      if (modules.get(row, column)) {
-        path += `M${(column * unit).toFixed(3)} ${(row * unit).toFixed(3)}h${unit.toFixed(3)}v${unit.toFixed(3)}h-${unit.toFixed(3)}z`
-      }
-    }
-  }
-  page.drawSvgPath(path, { x, y: y + side, color: black, borderWidth: 0 })
 }

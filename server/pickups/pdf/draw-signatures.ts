@@ -1,11 +1,11 @@
-import { rgb } from 'pdf-lib'
+import { LineCapStyle, rgb } from 'pdf-lib'
 import { say } from '../../words'
 import type { ManifestFacts } from './manifest-facts'
 import { shownInstant } from './shown-instant'
 import { margin, type PdfPen } from './pdf-pen'
 
 const gap = 24
-const drawn = { width: 200, height: 80 }
+const drawn = { width: 150, height: 60 }
 
 /** Two signature fields side by side: drawn lines, a typed name, or a line to sign on. */
 export function drawSignatures(pen: PdfPen, facts: ManifestFacts): void {
@@ -15,7 +15,7 @@ export function drawSignatures(pen: PdfPen, facts: ManifestFacts): void {
     signature: facts.signatures.find((signature) => signature.party === party),
   }))
   const height =
-    190 +
+    165 +
     Math.max(
       ...parties.map(({ signature }) =>
         signature?.dispute ? pen.heightOf(signature.dispute, width, 9) + 14 : 0,
@@ -88,6 +88,8 @@ function drawStrokes(
   const path = strokes
     .map((stroke) =>
       stroke
+        // A stroke of one point is a dot: a line to itself, which the round end makes visible.
+        .concat(stroke.length === 1 ? stroke : [])
         .map(
           ([px, py], index) =>
             `${index === 0 ? 'M' : 'L'}${(px * scale).toFixed(2)} ${(py * scale).toFixed(2)}`,
@@ -100,5 +102,6 @@ function drawStrokes(
     y: y + drawn.height,
     borderColor: rgb(0, 0, 0),
     borderWidth: 1.1,
+    borderLineCap: LineCapStyle.Round,
   })
 }

@@ -50,13 +50,17 @@ export function runsOf(face: Face, text: string): Run[] {
       ((code >= 0x100 && code <= 0x24f) || (code >= 0x1e00 && code <= 0x1eff)) &&
       !face.covers(code)
     const font = isFurther && face.further !== null ? face.further : face.main
-    const shown =
-      isFurther || face.covers(code) ? character : code === 0x202f || code === 0x2009 ? ' ' : '?'
+    const shown = isFurther || face.covers(code) ? character : isSpace(code) ? ' ' : '?'
     const last = runs.at(-1)
     if (last !== undefined && last.font === font) last.text += shown
     else runs.push({ text: shown, font })
   }
   return runs
+}
+
+/** Tabs, and the thin and narrow spaces of number formats, which the files lack. */
+function isSpace(code: number): boolean {
+  return code === 0x09 || code === 0x2009 || code === 0x202f
 }
 
 export function widthOf(face: Face, text: string, size: number): number {

@@ -7,7 +7,16 @@ export type Paper = 'letter' | 'a4'
 const papers: Record<Paper, [number, number]> = { letter: [612, 792], a4: [595.28, 841.89] }
 
 export const margin = 42
-const lowest = 78
+/** What is kept free at the foot for the page's number and code. */
+const lowest = 86
+
+type LineAt = {
+  x: number
+  y: number
+  face?: FaceName
+  size?: number
+  right?: number | undefined
+}
 
 /** Writes down a page and opens the next one when the space runs out; y is the baseline-to-be, from the top down. */
 export class PdfPen {
@@ -28,6 +37,11 @@ export class PdfPen {
     this.openPage()
   }
 
+  /** The pen set on a page that was written before. */
+  on(page: PDFPage): Pick<PdfPen, 'line'> {
+    return { line: (text, at) => this.write(page, text, at) }
+  }
+
   get page(): PDFPage {
     const page = this.pages.at(-1)
     if (page === undefined) throw new Error('a pen always has a page')
@@ -45,29 +59,31 @@ export class PdfPen {
     if (this.y - height < lowest) this.openPage()
   }
 
-  line(
-    text: string,
-    at: { x: number; y: number; face?: FaceName; size?: number; right?: number; colour?: RGB },
-  ): void {
+  line(text: string, at: LineAt): void {
+    this.write(this.page, text, at)
+  }
+
+  private write(page: PDFPage, text: string, at: LineAt): void {
     const face = this.faces[at.face ?? 'text']
     const size = at.size ?? 10.5
     let x = at.right === undefined ? at.x : at.right - widthOf(face, text, size)
     for (const run of runsOf(face, text)) {
-      this.page.drawText(run.text, {
-        x,
-        y: at.y,
-        size,
-        font: run.font,
-        color: at.colour ?? this.black,
-      })
+      page.drawText(run.text, { x, y: at.y, size, font: run.font, color: this.black })
       x += run.font.widthOfTextAtSize(run.text, size)
     }
   }
 
-  /** Wrapped text from `y` down; gives the height it took. */
+  /** Wrapped text from `y` down, against the right edge where one is given; gives the height it took. */
   block(
     text: string,
-    at: { x: number; width: number; y: number; face?: FaceName; size?: number },
+    at: {
+      x: number
+      width: number
+      y: number
+      face?: FaceName
+      size?: number
+      right?: number | undefined
+    },
   ): number {
     const size = at.size ?? 10.5
     const lines = wrap(this.faces[at.face ?? 'text'], text, size, at.width)
@@ -75,6 +91,24 @@ export class PdfPen {
       this.line(line, { ...at, size, y: at.y - size - index * size * 1.3 }),
     )
     return lines.length * size * 1.3
+  }
+
+  /** Several lines of text that may be longer than a page: it flows on. */
+  flow(text: string, size: number): void {
+    for (const line of wrap(this.faces.text, text, size, this.width)) {
+      this.need(size * 1.3)
+      this.line(line, { x: margin, y: this.y - size, size })
+      this.y -= size * 1.3
+    }
+  }
+
+  /** One line of text, cut with three dots where it is wider than the space. */
+  fit(text: string, width: number, size: number, face: FaceName = 'text'): string {
+    if (widthOf(this.faces[face], text, size) <= width) return text
+    let kept = text
+    while (kept !== '' && widthOf(this.faces[face], `${kept}…`, size) > width)
+      kept = kept.slice(0, -1)
+    return `${kept.trimEnd()}…`
   }
 
   heightOf(text: string, width: number, size = 10.5, face: FaceName = 'text'): number {
