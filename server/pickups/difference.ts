@@ -48,7 +48,8 @@ export function differsByRule(lines: readonly Line[], rulePercent: string): bool
   const anyLine = received.some(
     (line) =>
       isAbove(line.receivedLitres ?? '0', line.shippedLitres, rulePercent) ||
-      isAbove(line.receivedKilograms ?? '0', line.shippedKilograms, rulePercent) ||
+      (!wasOnlyCounted(line) &&
+        isAbove(line.receivedKilograms ?? '0', line.shippedKilograms, rulePercent)) ||
       (line.receivedPieces ?? 0) !== line.pieces,
   )
   const total = (pick: (line: Line) => string) => sum(received.map(pick))
@@ -60,4 +61,9 @@ export function differsByRule(lines: readonly Line[], rulePercent: string): bool
       rulePercent,
     )
   )
+}
+
+/** Shipped by the piece and never weighed here: there is no mass to differ from. */
+function wasOnlyCounted(line: Line): boolean {
+  return isZero(line.shippedKilograms) && line.pieces > 0
 }
