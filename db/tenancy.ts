@@ -1,4 +1,5 @@
 import { sql } from 'drizzle-orm'
+import type { PgTransactionConfig } from 'drizzle-orm/pg-core'
 import type { Database, Transaction } from './client'
 
 /**
@@ -17,13 +18,17 @@ export async function asMember<T>(
   })
 }
 
-/** One transaction that sees every organisation: sign-in, mail, set-up, checks. Never for a member's request. */
+/**
+ * One transaction that sees every organisation: sign-in, mail, set-up, checks. Never for a member's request.
+ * @param settings a check over many statements asks for 'repeatable read', so that it sees one moment
+ */
 export async function asService<T>(
   db: Database,
   work: (tx: Transaction) => Promise<T>,
+  settings?: PgTransactionConfig,
 ): Promise<T> {
   return db.transaction(async (tx) => {
     await tx.execute(sql`select set_config('role', 'ebbmark_service', true)`)
     return work(tx)
-  })
+  }, settings)
 }

@@ -10,7 +10,9 @@ async function main(): Promise<number> {
   const opened = await openDatabase({ url: config.databaseUrl, folder: config.dataFolder })
   try {
     await migrateDatabase(opened)
-    const { movements, accounts, findings } = await asService(opened.db, checkBook)
+    const { movements, accounts, findings } = await asService(opened.db, checkBook, {
+      isolationLevel: 'repeatable read',
+    })
     for (const { code, detail } of findings) process.stdout.write(`${code}: ${detail}\n`)
     if (findings.length > 0) return 1
     process.stdout.write(`the book is sound: ${movements} movements, ${accounts} accounts\n`)

@@ -3,6 +3,7 @@ import {
   asc,
   desc,
   eq,
+  gt,
   gte,
   inArray,
   isNull,
@@ -141,6 +142,30 @@ export async function listDrainsAround(
         lte(drains.occurredAt, to),
       ),
     )
+}
+
+/** Drains in the order of their ids, after one, each with its newest revision (null where it has none). */
+export async function listDrainsWithNewestFacts(
+  tx: Transaction,
+  after: string | undefined,
+  limit: number,
+) {
+  const newest = tx
+    .selectDistinctOn([drainRevisions.drainId], {
+      drainId: drainRevisions.drainId,
+      revision: drainRevisions.revision,
+      facts: drainRevisions.facts,
+    })
+    .from(drainRevisions)
+    .orderBy(drainRevisions.drainId, desc(drainRevisions.revision))
+    .as('newest')
+  return tx
+    .select({ drain: drains, revision: newest.revision, facts: newest.facts })
+    .from(drains)
+    .leftJoin(newest, eq(newest.drainId, drains.id))
+    .where(after === undefined ? undefined : gt(drains.id, after))
+    .orderBy(asc(drains.id))
+    .limit(limit)
 }
 
 /** Litres that stand for a drain in each container it was poured into, by container; empty for a drain not saved. */

@@ -5,7 +5,9 @@ import { listMovementsAfter } from '@/db/queries/book'
 import { accounts, balances, books } from '@/db/schema/book'
 import { documents } from '@/db/schema/pickups'
 import { sites } from '@/db/schema/sites'
+import { contentHash } from '../content-hash'
 import { firstHash, hashOfMovement } from './canonical-movement'
+import { checkDrains } from './check-drains'
 
 export type BookFinding = { code: string; detail: string }
 export type BookCheck = { movements: number; accounts: number; findings: BookFinding[] }
@@ -33,7 +35,7 @@ export async function checkBook(tx: Transaction): Promise<BookCheck> {
     const { rows } = (await tx.execute(query)) as unknown as { rows: { detail: string }[] }
     findings.push(...rows.map(({ detail }) => ({ code, detail })))
   }
-  findings.push(...(await checkDocuments(tx)))
+  findings.push(...(await checkDrains(tx)), ...(await checkDocuments(tx)))
   const [counted] = await tx.select({ accounts: count() }).from(accounts)
   return { movements: movementCount, accounts: counted?.accounts ?? 0, findings }
 }
@@ -133,6 +135,8 @@ async function checkDocuments(tx: Transaction): Promise<BookFinding[]> {
     if (row === undefined) continue
     const found = createHash('sha256').update(row.bytes).digest('hex')
     if (found !== row.sha256) findings.push({ code: 'document-changed', detail: `document ${id}` })
+    if (contentHash(row.facts) !== row.factsSha256)
+      findings.push({ code: 'document-facts-changed', detail: `document ${id}` })
   }
   return findings
 }

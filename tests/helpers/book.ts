@@ -44,6 +44,8 @@ export async function bookLines(test: TestApp, siteId: string, after = 0): Promi
 
 /** What checkBook finds in the whole database; [] when every book is sound. */
 export async function bookFindings(test: TestApp): Promise<string[]> {
-  const { findings } = await asService(test.opened.db, checkBook)
+  const { findings } = await asService(test.opened.db, checkBook, {
+    isolationLevel: 'repeatable read',
+  })
   return findings.map(({ code, detail }) => `${code}: ${detail}`)
 }
