@@ -5,7 +5,13 @@ import type { PDFDocument, PDFFont } from 'pdf-lib'
 export type FaceName = 'text' | 'bold' | 'heading' | 'code'
 
 /** A face with the second file that carries its further latin letters, where it has one. */
-export type Face = { main: PDFFont; further: PDFFont | null; covers: (code: number) => boolean }
+export type Face = {
+  main: PDFFont
+  further: PDFFont | null
+  covers: (code: number) => boolean
+  /** Of characters measured so far, at 1000 points. */
+  widths: Map<string, number>
+}
 export type Faces = Record<FaceName, Face>
 
 const files: Record<FaceName, { main: string; further: string | null }> = {
@@ -14,6 +20,9 @@ const files: Record<FaceName, { main: string; further: string | null }> = {
   heading: { main: 'heading-600', further: 'heading-ext-600' },
   code: { main: 'code-400', further: null },
 }
+
+/** Kerning is never written into the page, and working it out is most of the time a page takes. */
+const embedding = { subset: true, features: { kern: false, liga: false, calt: false } }
 
 /** Embeds the product's own fonts, cut down to the letters the document uses. */
 export async function embedFaces(document: PDFDocument): Promise<Faces> {
@@ -25,9 +34,10 @@ export async function embedFaces(document: PDFDocument): Promise<Faces> {
     const further = files[name].further
     const known = new Set(fontkit.create(bytes).characterSet)
     return {
-      main: await document.embedFont(bytes, { subset: true }),
-      further: further === null ? null : await document.embedFont(read(further), { subset: true }),
+      main: await document.embedFont(bytes, embedding),
+      further: further === null ? null : await document.embedFont(read(further), embedding),
       covers: (code) => known.has(code),
+      widths: new Map(),
     }
   }
   return {
@@ -63,11 +73,21 @@ function isSpace(code: number): boolean {
   return code === 0x09 || code === 0x2009 || code === 0x202f
 }
 
+/** Width in points: without kerning a line is as wide as its characters, each measured once. */
 export function widthOf(face: Face, text: string, size: number): number {
-  return runsOf(face, text).reduce(
-    (width, run) => width + run.font.widthOfTextAtSize(run.text, size),
-    0,
-  )
+  let width = 0
+  for (const run of runsOf(face, text)) {
+    for (const character of run.text) width += perThousand(face, run.font, character)
+  }
+  return (width * size) / 1000
+}
+
+function perThousand({ widths }: Face, font: PDFFont, character: string): number {
+  const known = widths.get(character)
+  if (known !== undefined) return known
+  const measured = font.widthOfTextAtSize(character, 1000)
+  widths.set(character, measured)
+  return measured
 }
 
 /** Breaks text at spaces, and words that are wider than the column wherever they must. */

@@ -69,7 +69,7 @@ export class PdfPen {
     let x = at.right === undefined ? at.x : at.right - widthOf(face, text, size)
     for (const run of runsOf(face, text)) {
       page.drawText(run.text, { x, y: at.y, size, font: run.font, color: this.black })
-      x += run.font.widthOfTextAtSize(run.text, size)
+      x += widthOf(face, run.text, size)
     }
   }
 
