@@ -56,7 +56,7 @@ function api(services: AppServices, settings: AppSettings): Router {
   // 1 MB: a drawn signature is the largest thing sent as JSON.
   router.use(express.json({ limit: '1mb', strict: true }))
   router.use(cookieParser())
-  router.use(readBearer(services.secret))
+  router.use(readBearer(services.secret, services.clock))
   router.use(healthRoutes(services))
   router.use(openApiRoute())
   router.use(sessionRoutes(services))

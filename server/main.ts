@@ -10,6 +10,7 @@ import packageJson from '@/package.json'
 import type { AppServices, DemoInfo } from './app-services'
 import { readConfig, type Config } from './config'
 import { createApp } from './create-app'
+import { openDemo } from './demo/open-demo'
 import { usualRates } from './http/rate-limits'
 import { runMailJob } from './mail/run-mail-job'
 import type { SendMail } from './mail/send-outbox'
@@ -37,6 +38,7 @@ async function main(): Promise<void> {
       keepsMail: config.smtpUrl === undefined,
       version: packageJson.version,
     }
+    if (config.wantsDemo) services.demo = await openDemo(opened.db, services)
     const app = createApp(services, {
       webFolder: join(process.cwd(), 'dist/web'),
       proxies: config.proxies,

@@ -1,4 +1,4 @@
-import { and, eq, gt, isNull, ne, or, sql } from 'drizzle-orm'
+import { and, asc, eq, gt, isNull, ne, sql } from 'drizzle-orm'
 import type { Role } from '@/shared/policies'
 import type { Transaction } from '../client'
 import { organisations, people, personSites, sessions } from '../schema/organisations'
@@ -60,17 +60,13 @@ export async function findSignedInPerson(tx: Transaction, personId: string) {
   return found
 }
 
-/** The living session whose present or previous refresh token has this hash. */
-export async function lockSessionByToken(tx: Transaction, tokenHash: string, now: Date) {
+/** A session that has neither ended nor run out; whoever rotates it takes turns. */
+export async function lockLivingSession(tx: Transaction, id: string, now: Date) {
   const [found] = await tx
     .select()
     .from(sessions)
     .where(
-      and(
-        or(eq(sessions.tokenHash, tokenHash), eq(sessions.previousTokenHash, tokenHash)),
-        isNull(sessions.endedAt),
-        gt(sessions.expiresAt, now),
-      ),
+      and(eq(sessions.id, id), isNull(sessions.endedAt), gt(sessions.expiresAt, now)),
     )
     .limit(1)
     .for('update')
@@ -107,17 +103,13 @@ export async function listPeople(tx: Transaction) {
     .orderBy(people.name, people.id)
 }
 
+/** How many administrators remain without one of them. Locks them all in one order: two who go at once take turns. */
 export async function countAdministrators(tx: Transaction, except: string): Promise<number> {
   const found = await tx
     .select({ id: people.id })
     .from(people)
-    .where(
-      and(
-        eq(people.role, 'administrator' satisfies Role),
-        isNull(people.retiredAt),
-        ne(people.id, except),
-      ),
-    )
+    .where(and(eq(people.role, 'administrator' satisfies Role), isNull(people.retiredAt)))
+    .orderBy(asc(people.id))
     .for('update')
-  return found.length
+  return found.filter(({ id }) => id !== except).length
 }

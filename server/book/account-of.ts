@@ -1,12 +1,12 @@
 import { and, eq, isNull } from 'drizzle-orm'
 import type { Transaction } from '@/db/client'
-import type { AccountPlace } from '@/db/queries/book'
+import { lockBook, type AccountPlace } from '@/db/queries/book'
 import { accounts } from '@/db/schema/book'
 import type { ActContext } from '../act-context'
 
 /**
- * The account of a place at a site, opened when it is first needed. Two that open it at once get the same one: the
- * unique key decides.
+ * The account of a place at a site, opened when it is first needed. Two that open it at once get the same one: they
+ * take turns in the site's book, so that they cannot wait for each other either.
  */
 export async function accountOf(
   tx: Transaction,
@@ -44,6 +44,7 @@ export async function accountOf(
       .limit(1)
   const [found] = await find()
   if (found !== undefined) return found.id
+  await lockBook(tx, siteId)
   await tx
     .insert(accounts)
     .values({

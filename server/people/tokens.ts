@@ -1,5 +1,6 @@
 import { createHash, createSecretKey, randomBytes, type KeyObject } from 'node:crypto'
 import jwt from 'jsonwebtoken'
+import { z } from 'zod'
 
 /** An access token is short, so that what it says is never stale for long. */
 export const accessSeconds = 600
@@ -29,9 +30,18 @@ export function accessToken(
   })
 }
 
-/** 256 random bits; only their hash is stored. */
-export function newRefreshToken(): string {
-  return randomBytes(32).toString('base64url')
+/**
+ * The session it belongs to and 256 random bits; only the hash of the whole is stored. The session is named so that an
+ * old token of a living session is known for what it is.
+ */
+export function newRefreshToken(sessionId: string): string {
+  return `${sessionId}.${randomBytes(32).toString('base64url')}`
+}
+
+/** The session a refresh token names, whether or not it is that session's present one. */
+export function sessionOfToken(token: string): string | undefined {
+  const named = z.uuid().safeParse(token.slice(0, token.indexOf('.')))
+  return named.data
 }
 
 export function refreshHash(token: string): string {

@@ -6,7 +6,8 @@ import { massUnits, volumeUnits } from '../quantities/units'
 export const nothing = z.strictObject({})
 export const noReply = z.undefined()
 
-export const id = z.uuid()
+/** Read whatever its case, and compared in one. */
+export const id = z.uuid().toLowerCase()
 export const idParams = z.strictObject({ id })
 
 /** Any exact decimal, at most 20 digits before and 18 after the point: what numeric(38,18) holds. */
@@ -36,11 +37,13 @@ export type Mass = z.infer<typeof mass>
 export type Quantity = z.infer<typeof quantity>
 
 /** A calendar day of a site: YYYY-MM-DD. */
-export const day = z.iso.date()
+export const day = z.iso.date().refine((value) => value >= '1900-01-01', 'too-long-ago')
 /** An instant with its offset or Z. */
-export const instant = z.iso.datetime({ offset: true })
+export const instant = z.iso
+  .datetime({ offset: true })
+  .refine((value) => value >= '1900-01-02', 'too-long-ago')
 
-/** One line of text: trimmed, no control characters, at most `most` characters. */
+/** One line of text: trimmed, no control characters and no halves of one, at most `most` characters. */
 export function line(most: number) {
   return (
     z
@@ -48,7 +51,7 @@ export function line(most: number) {
       .trim()
       .max(most)
       // eslint-disable-next-line no-control-regex -- control characters are exactly what is refused
-      .regex(/^[^\u0000-\u001f\u007f]*$/, 'control-characters')
+      .regex(/^[^\u0000-\u001f\u007f\p{Surrogate}]*$/u, 'control-characters')
   )
 }
 
@@ -64,7 +67,7 @@ export function lines(most: number) {
       .trim()
       .max(most)
       // eslint-disable-next-line no-control-regex -- control characters are exactly what is refused
-      .regex(/^[^\u0000-\u0008\u000b\u000c\u000e-\u001f\u007f]*$/, 'control-characters')
+      .regex(/^[^\u0000-\u0008\u000b\u000c\u000e-\u001f\u007f\p{Surrogate}]*$/u, 'control-characters')
   )
 }
 

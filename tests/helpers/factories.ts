@@ -92,8 +92,8 @@ async function signedIn(
     }),
   )
   const claims = { personId: person.id, organisationId: person.organisationId, sessionId }
-  // Tokens are judged by the machine's own clock, whatever the product takes for the present.
-  const bearer = () => `Bearer ${accessToken(test.services.secret, claims, new Date())}`
+  // A fresh token for every request: a test moves the clock as it likes.
+  const bearer = () => `Bearer ${accessToken(test.services.secret, claims, test.services.clock())}`
   return {
     ...person,
     get: (path) => request(test.app).get(`/api${path}`).set('Authorization', bearer()),
