@@ -9,6 +9,7 @@ import { bookRoutes } from './books/routes'
 import { containerRoutes } from './containers/routes'
 import { documentRoutes } from './documents/routes'
 import { drainRoutes } from './drains/routes'
+import { errorForLog } from './error-for-log'
 import { readBearer } from './http/authenticate'
 import { healthRoutes } from './http/health-routes'
 import { refuseOtherContent, refuseOtherMethods } from './http/refusals'
@@ -84,6 +85,7 @@ function requestLog(services: AppServices): RequestHandler {
         url: request.url.replace(/([?&]ticket=)[^&]*/, '$1…'),
       }),
       res: (response: { statusCode: number }) => ({ status: response.statusCode }),
+      err: (error: { raw?: unknown }) => errorForLog(error.raw ?? error),
     },
     customLogLevel: (_request, response, error) =>
       error !== undefined || response.statusCode >= 500

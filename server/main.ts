@@ -10,6 +10,7 @@ import packageJson from '@/package.json'
 import type { AppServices, DemoInfo } from './app-services'
 import { readConfig, type Config } from './config'
 import { createApp } from './create-app'
+import { errorForLog } from './error-for-log'
 import { openDemo } from './demo/open-demo'
 import { usualRates } from './http/rate-limits'
 import { runMailJob } from './mail/run-mail-job'
@@ -31,7 +32,7 @@ async function main(): Promise<void> {
       databaseKind: opened.kind,
       clock: () => new Date(),
       newId: randomUUID,
-      log: pino({ level: config.logLevel }, pino.destination(2)),
+      log: pino({ level: config.logLevel, serializers: { err: errorForLog } }, pino.destination(2)),
       publicUrl: config.publicUrl,
       secret: secretKey(config.secret),
       demo: null,

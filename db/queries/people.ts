@@ -65,9 +65,7 @@ export async function lockLivingSession(tx: Transaction, id: string, now: Date) 
   const [found] = await tx
     .select()
     .from(sessions)
-    .where(
-      and(eq(sessions.id, id), isNull(sessions.endedAt), gt(sessions.expiresAt, now)),
-    )
+    .where(and(eq(sessions.id, id), isNull(sessions.endedAt), gt(sessions.expiresAt, now)))
     .limit(1)
     .for('update')
   return found

@@ -86,8 +86,6 @@ export const sessions = pgTable(
       columns: [table.organisationId, table.personId],
       foreignColumns: [people.organisationId, people.id],
     }),
-    index('sessions_token_hash').on(table.tokenHash),
-    index('sessions_previous_token_hash').on(table.previousTokenHash),
     index('sessions_person_id').on(table.personId),
   ],
 )
