@@ -1,27 +1,28 @@
 import { Router } from 'express'
-import { and, asc, desc, eq, inArray, isNull, lt, or, sql } from 'drizzle-orm'
+import { asc, desc, eq, inArray, sql } from 'drizzle-orm'
 import type { z } from 'zod'
 import type { Transaction } from '@/db/client'
 import { endSessions, listPeople } from '@/db/queries/people'
 import { ofSites } from '@/db/queries/sites'
 import { organisations, people } from '@/db/schema/organisations'
 import { containers, fluids, machines, parties, permits, sites, streams } from '@/db/schema/sites'
-import { audit } from '@/db/schema/trail'
 import type { Contract } from '@/shared/contracts/contract'
 import * as contracts from '@/shared/contracts/set-up'
 import type { ActContext } from '../act-context'
 import type { AppServices } from '../app-services'
+import { listAudit } from '../audit/list-audit'
 import { writeAudit } from '../audit/write-audit'
-import { readCursor, writeCursor } from '../http/cursor'
 import { serve } from '../http/route'
 import { hashPassword } from '../people/passwords'
 import { problem } from '../problem'
 import { sitesSeen } from '../sites-seen'
 import { addPermit } from './add-permit'
+import { retirePermit } from './retire-permit'
 import * as kinds from './set-up-kinds'
 import {
   changeRecord,
   createRecord,
+  isCreatedSo,
   setRetired,
   type SetUpKind,
   type SetUpTable,
@@ -75,29 +76,22 @@ export function setUpRoutes(services: AppServices): Router {
     return undefined
   })
 
-  serve(router, services, contracts.addPermit, async (tx, context, { params, body }) => {
+  serve(router, services, contracts.addPermit, async (tx, context, { params, body, repeated }) => {
     const party = await presentedParty(tx, params.id)
-    await addPermit(tx, context, party.id, body)
+    const same = party.permits.find(({ id }) => id === body.id)
+    const isSame =
+      same !== undefined &&
+      same.number === body.number &&
+      same.startsOn === body.startsOn &&
+      same.endsOn === body.endsOn &&
+      same.note === body.note
+    if (isSame) repeated()
+    else await addPermit(tx, context, party.id, body)
     return presentedParty(tx, party.id)
   })
-  serve(router, services, contracts.retirePermit, async (tx, context, { params }) => {
-    const [permit] = await tx
-      .update(permits)
-      .set({ retiredAt: context.clock() })
-      .where(and(eq(permits.id, params.id), isNull(permits.retiredAt)))
-      .returning()
-    const [found] = permit
-      ? [permit]
-      : await tx.select().from(permits).where(eq(permits.id, params.id))
-    if (found === undefined) throw problem('not-found')
-    await writeAudit(tx, context, {
-      act: 'change-set-up',
-      subjectKind: 'party',
-      subjectId: found.partyId,
-      details: { what: 'retire-permit', number: found.number },
-    })
-    return presentedParty(tx, found.partyId)
-  })
+  serve(router, services, contracts.retirePermit, async (tx, context, { params }) =>
+    presentedParty(tx, await retirePermit(tx, context, params.id)),
+  )
 
   serve(router, services, contracts.readCatalogue, async (tx, context) => {
     const [organisation] = await tx
@@ -119,39 +113,9 @@ export function setUpRoutes(services: AppServices): Router {
     }
   })
 
-  serve(router, services, contracts.listAudit, async (tx, _, { query }) => {
-    const after = readCursor(query.cursor)
-    const rows = await tx
-      .select({ entry: audit, name: people.name })
-      .from(audit)
-      .leftJoin(people, eq(people.id, audit.personId))
-      .where(
-        and(
-          query.subjectId === undefined ? undefined : eq(audit.subjectId, query.subjectId),
-          after === undefined
-            ? undefined
-            : or(
-                lt(audit.at, new Date(after.at)),
-                and(eq(audit.at, new Date(after.at)), lt(audit.id, after.id)),
-              ),
-        ),
-      )
-      .orderBy(desc(audit.at), desc(audit.id))
-      .limit(query.limit + 1)
-    const shown = rows.slice(0, query.limit)
-    const last = shown.at(-1)
-    return {
-      rows: shown.map(({ entry, name }) => ({
-        ...entry,
-        at: entry.at.toISOString(),
-        by: entry.personId === null || name === null ? null : { id: entry.personId, name },
-      })),
-      next:
-        rows.length > query.limit && last
-          ? writeCursor({ at: last.entry.at.toISOString(), id: last.entry.id })
-          : null,
-    }
-  })
+  serve(router, services, contracts.listAudit, (tx, context, { query }) =>
+    listAudit(tx, context, query),
+  )
   return router
 }
 
@@ -169,9 +133,11 @@ function serveSix(router: Router, services: AppServices) {
     }
     serve(router, services, six.list, async (tx, context) => ({ rows: await list(tx, context) }))
     serve(router, services, six.read, (tx, context, { params }) => one(tx, context, idOf(params)))
-    serve(router, services, six.create, async (tx, context, { body }) => {
-      const row = await createRecord(tx, context, kind, body as Body)
-      return one(tx, context, row.id)
+    serve(router, services, six.create, async (tx, context, { body, repeated }) => {
+      const given = body as Body
+      if (await isCreatedSo(tx, kind, given)) repeated()
+      else await createRecord(tx, context, kind, given)
+      return one(tx, context, given.id)
     })
     serve(router, services, six.change, async (tx, context, { params, body, ifMatch }) => {
       const id = idOf(params)

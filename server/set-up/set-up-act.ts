@@ -1,9 +1,11 @@
-import { and, asc, eq } from 'drizzle-orm'
+import { and, asc, eq, sql } from 'drizzle-orm'
 import type { AnyPgColumn, PgTable } from 'drizzle-orm/pg-core'
 import type { Transaction } from '@/db/client'
+import { audit } from '@/db/schema/trail'
 import type { Act } from '@/shared/policies'
 import type { ActContext } from '../act-context'
 import { writeAudit } from '../audit/write-audit'
+import { contentHash } from '../content-hash'
 import { problem } from '../problem'
 
 /** A table of set-up records: versioned, retired instead of deleted. */
@@ -42,7 +44,10 @@ export type SetUpKind<T extends SetUpTable, Body> = {
     row: Row<T>,
     what: 'create' | 'change' | 'retire' | 'restore',
     body?: Body,
+    before?: Row<T>,
   ) => Promise<void>
+  /** Of what the trail does not keep: is this what the record was made with? */
+  isMadeWith?: (row: Row<T>, body: Body) => Promise<boolean>
 }
 
 export async function listRecords<T extends SetUpTable>(
@@ -71,7 +76,31 @@ export async function getRecord<T extends SetUpTable>(
   return row as Row<T>
 }
 
-/** Makes a record; the same id with the same content again is answered as before by the caller. */
+/** Was this record made with this very content? Then the answer was lost on its way, and is given again. */
+export async function isCreatedSo<T extends SetUpTable, Body extends { id: string }>(
+  tx: Transaction,
+  kind: SetUpKind<T, Body>,
+  body: Body,
+): Promise<boolean> {
+  const [made] = await tx
+    .select({ row: kind.table as PgTable, details: audit.details })
+    .from(kind.table as PgTable)
+    .innerJoin(audit, eq(audit.subjectId, kind.table.id))
+    .where(
+      and(
+        eq(kind.table.id, body.id),
+        eq(audit.subjectKind, kind.subjectKind),
+        sql`${audit.details} ->> 'what' = 'create'`,
+      ),
+    )
+    .limit(1)
+  if (made === undefined) return false
+  const given = (made.details as { given?: unknown }).given
+  if (contentHash(given) !== contentHash(withoutPassword(body))) return false
+  return (await kind.isMadeWith?.(made.row as Row<T>, body)) ?? true
+}
+
+/** Makes a record. @throws Problem id-reused, code-taken */
 export async function createRecord<T extends SetUpTable, Body extends { id: string }>(
   tx: Transaction,
   context: ActContext,
@@ -144,9 +173,7 @@ async function follow<T extends SetUpTable, Body>(
   body?: Body,
   before?: Row<T>,
 ): Promise<void> {
-  await kind.after?.(tx, context, row, what, body)
-  const given = { ...(body as Values | undefined) }
-  delete given['password']
+  await kind.after?.(tx, context, row, what, body, before)
   await writeAudit(tx, context, {
     act: kind.act,
     subjectKind: kind.subjectKind,
@@ -154,10 +181,16 @@ async function follow<T extends SetUpTable, Body>(
     siteId: 'siteId' in row && typeof row.siteId === 'string' ? row.siteId : null,
     details: {
       what,
-      ...(body === undefined ? {} : { given }),
+      ...(body === undefined ? {} : { given: withoutPassword(body as Values) }),
       ...(before === undefined ? {} : { before: publicPart(before) }),
     },
   })
+}
+
+function withoutPassword(body: Values): Values {
+  const kept = { ...body }
+  delete kept['password']
+  return kept
 }
 
 function publicPart(row: Values): Values {

@@ -13,7 +13,7 @@ import { toLitres } from '@/shared/quantities/convert'
 import { openBook } from '../book/open-book'
 import { evaluateSiteLimits } from '../limits/evaluate-site-limits'
 import { installPack } from '../limits/install-pack'
-import { hashPassword } from '../people/passwords'
+import { hashPassword, passwordMatches } from '../people/passwords'
 import { replacePersonSites } from '../people/replace-person-sites'
 import { fieldProblem, problem } from '../problem'
 import type { SetUpKind } from './set-up-act'
@@ -40,12 +40,11 @@ export const siteKind: SetUpKind<typeof sites, SiteBody> = {
         'Name an IANA time zone, like America/Chicago',
       )
     }
-    if (
-      before !== undefined &&
-      before.timeZone !== body.timeZone &&
-      (await hasLines(tx, before.id))
-    ) {
-      throw inUse('Its days are already cut by the old time zone. Make a new site instead.')
+    if (before !== undefined && before.timeZone !== body.timeZone) {
+      // What is recorded meanwhile waits, or is seen.
+      await lockBook(tx, before.id)
+      if (await hasLines(tx, before.id))
+        throw inUse('Its days are already cut by the old time zone. Make a new site instead.')
     }
     const { id: _id, ...columns } = body
     return columns
@@ -116,8 +115,8 @@ export const fluidKind: SetUpKind<typeof fluids, FluidBody> = {
   order: fluids.name,
   subjectKind: 'fluid',
   act: 'change-set-up',
-  columns: async (tx, _, body) => {
-    await mustExist(tx, streams, body.streamId, 'streamId')
+  columns: async (tx, _, body, before) => {
+    await mustExist(tx, streams, body.streamId, 'streamId', before?.streamId)
     return { name: body.name, streamId: body.streamId }
   },
   beforeRetire: async (tx, _, fluid) => {
@@ -136,9 +135,9 @@ export const machineKind: SetUpKind<typeof machines, MachineBody> = {
   order: machines.code,
   subjectKind: 'machine',
   act: 'change-set-up',
-  columns: async (tx, _, body) => {
-    await mustExist(tx, sites, body.siteId, 'siteId')
-    await mustExist(tx, fluids, body.fluidId, 'fluidId')
+  columns: async (tx, _, body, before) => {
+    await mustExist(tx, sites, body.siteId, 'siteId', before?.siteId)
+    await mustExist(tx, fluids, body.fluidId, 'fluidId', before?.fluidId)
     const { id: _id, reservoir, system, ...columns } = body
     return {
       ...columns,
@@ -158,8 +157,8 @@ export const containerKind: SetUpKind<typeof containers, ContainerBody> = {
   subjectKind: 'container',
   act: 'change-set-up',
   columns: async (tx, _, body, before) => {
-    await mustExist(tx, sites, body.siteId, 'siteId')
-    await mustExist(tx, streams, body.streamId, 'streamId')
+    await mustExist(tx, sites, body.siteId, 'siteId', before?.siteId)
+    await mustExist(tx, streams, body.streamId, 'streamId', before?.streamId)
     // What is poured meanwhile waits, or is seen.
     if (before !== undefined) await lockBook(tx, before.siteId)
     if (
@@ -192,7 +191,11 @@ export const containerKind: SetUpKind<typeof containers, ContainerBody> = {
       throw inUse('It is not empty in the book. Ship or transfer what is in it first.')
     }
   },
-  after: async (tx, context, container) => evaluateSiteLimits(tx, context, container.siteId),
+  after: async (tx, context, container, _what, _body, before) => {
+    // An empty container that moves takes its capacity away from where it stood.
+    const siteIds = new Set([before?.siteId ?? container.siteId, container.siteId])
+    for (const siteId of siteIds) await evaluateSiteLimits(tx, context, siteId)
+  },
 }
 
 export function partyKind(kind: 'hauler' | 'facility'): SetUpKind<typeof parties, PartyBody> {
@@ -222,7 +225,7 @@ export const personKind: SetUpKind<typeof people, PersonBody> = {
     if (before !== undefined && before.role === 'administrator' && body.role !== 'administrator') {
       await keepAnAdministrator(tx, before.id)
     }
-    for (const siteId of body.siteIds) await mustExist(tx, sites, siteId, 'siteIds')
+    for (const siteId of body.siteIds) await mustExist(tx, sites, siteId, 'siteIds', siteId)
     const { id: _id, siteIds: _siteIds, password, ...columns } = body
     return password === undefined
       ? columns
@@ -235,6 +238,7 @@ export const personKind: SetUpKind<typeof people, PersonBody> = {
     if (body !== undefined) await replacePersonSites(tx, context, person.id, body.siteIds)
     if (what === 'retire') await endSessions(tx, person.id, context.clock())
   },
+  isMadeWith: async (person, body) => passwordMatches(body.password ?? '', person.passwordHash),
 }
 
 async function keepAnAdministrator(tx: Transaction, except: string): Promise<void> {
@@ -245,16 +249,26 @@ function inUse(what: string) {
   return problem('still-in-use', { facts: { what } })
 }
 
-/** @throws Problem not-found naming the field */
+/**
+ * A named record exists and is in use; what a record named before it may keep.
+ * @throws Problem fields-refused naming the field
+ */
 async function mustExist(
   tx: Transaction,
   table: typeof sites | typeof streams | typeof fluids,
   id: string,
   field: string,
+  kept?: string,
 ): Promise<void> {
-  const [found] = await tx.select({ id: table.id }).from(table).where(eq(table.id, id)).limit(1)
+  const [found] = await tx
+    .select({ retiredAt: table.retiredAt })
+    .from(table)
+    .where(eq(table.id, id))
+    .limit(1)
   if (found === undefined)
     throw fieldProblem('fields-refused', field, 'unknown', 'There is no such record')
+  if (found.retiredAt !== null && id !== kept)
+    throw fieldProblem('fields-refused', field, 'retired', 'This record is retired')
 }
 
 async function hasLines(tx: Transaction, siteId: string): Promise<boolean> {
