@@ -45,14 +45,11 @@ export const instant = z.iso
 
 /** One line of text: trimmed, no control characters and no halves of one, at most `most` characters. */
 export function line(most: number) {
-  return (
-    z
-      .string()
-      .trim()
-      .max(most)
-      // eslint-disable-next-line no-control-regex -- control characters are exactly what is refused
-      .regex(/^[^\u0000-\u001f\u007f\p{Surrogate}]*$/u, 'control-characters')
-  )
+  return z
+    .string()
+    .trim()
+    .max(most)
+    .regex(/^[^\u0000-\u001f\u007f\p{Surrogate}]*$/u, 'control-characters')
 }
 
 export function requiredLine(most: number) {
@@ -61,14 +58,11 @@ export function requiredLine(most: number) {
 
 /** Several lines: as typed, trimmed at the ends; only tab and line breaks among the control characters. */
 export function lines(most: number) {
-  return (
-    z
-      .string()
-      .trim()
-      .max(most)
-      // eslint-disable-next-line no-control-regex -- control characters are exactly what is refused
-      .regex(/^[^\u0000-\u0008\u000b\u000c\u000e-\u001f\u007f\p{Surrogate}]*$/u, 'control-characters')
-  )
+  return z
+    .string()
+    .trim()
+    .max(most)
+    .regex(/^[^\u0000-\u0008\u000b\u000c\u000e-\u001f\u007f\p{Surrogate}]*$/u, 'control-characters')
 }
 
 /** Short code of a site, machine, container or stream: capitals, digits and dashes. */
