@@ -24,18 +24,22 @@ const files: Record<FaceName, { main: string; further: string | null }> = {
 /** Kerning is never written into the page, and working it out is most of the time a page takes. */
 const embedding = { subset: true, features: { kern: false, liga: false, calt: false } }
 
-/** Embeds the product's own fonts, cut down to the letters the document uses. */
-export async function embedFaces(document: PDFDocument): Promise<Faces> {
+/**
+ * Embeds the product's own fonts, cut down to the letters the document uses.
+ * @param words everything the document may write: where no further letter is in it, the second files are left out
+ */
+export async function embedFaces(document: PDFDocument, words: string): Promise<Faces> {
   const { default: fontkit } = await import('@pdf-lib/fontkit')
   document.registerFontkit(fontkit)
+  const needsFurther = [...words.normalize('NFC')].some((character) => isFurtherLatin(character))
   const read = (name: string) => readFileSync(join(process.cwd(), 'fonts', `${name}.ttf`))
+  const embed = (name: string) => document.embedFont(read(name), embedding)
   const face = async (name: FaceName): Promise<Face> => {
-    const bytes = read(files[name].main)
-    const further = files[name].further
-    const known = new Set(fontkit.create(bytes).characterSet)
+    const { main, further } = files[name]
+    const known = new Set(fontkit.create(read(main)).characterSet)
     return {
-      main: await document.embedFont(bytes, embedding),
-      further: further === null ? null : await document.embedFont(read(further), embedding),
+      main: await embed(main),
+      further: needsFurther && further !== null ? await embed(further) : null,
       covers: (code) => known.has(code),
       widths: new Map(),
     }
@@ -48,6 +52,12 @@ export async function embedFaces(document: PDFDocument): Promise<Faces> {
   }
 }
 
+/** Letters of central and northern Europe and of Vietnamese: what the second files are cut to. */
+function isFurtherLatin(character: string): boolean {
+  const code = character.codePointAt(0) ?? 0
+  return (code >= 0x100 && code <= 0x24f) || (code >= 0x1e00 && code <= 0x1eff)
+}
+
 type Run = { text: string; font: PDFFont }
 
 /** A line in runs of one font each; what neither file has is shown as a question mark rather than as nothing. */
@@ -55,10 +65,7 @@ export function runsOf(face: Face, text: string): Run[] {
   const runs: Run[] = []
   for (const character of text.normalize('NFC')) {
     const code = character.codePointAt(0) ?? 0
-    const isFurther =
-      face.further !== null &&
-      ((code >= 0x100 && code <= 0x24f) || (code >= 0x1e00 && code <= 0x1eff)) &&
-      !face.covers(code)
+    const isFurther = face.further !== null && isFurtherLatin(character) && !face.covers(code)
     const font = isFurther && face.further !== null ? face.further : face.main
     const shown = isFurther || face.covers(code) ? character : isSpace(code) ? ' ' : '?'
     const last = runs.at(-1)

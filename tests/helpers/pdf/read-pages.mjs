@@ -19,7 +19,7 @@ export async function readPages(base64) {
     pages.push(await readPage(await document.getPage(number), document.canvasFactory))
   }
   await task.destroy()
-  return { info: { ...info }, pages }
+  return { title: info.Title, producer: info.Producer, madeAt: info.CreationDate, pages }
 }
 
 async function readPage(page, canvasFactory) {
@@ -48,7 +48,8 @@ async function readPage(page, canvasFactory) {
     text: texts.map(({ text }) => text).join('\n'),
     texts,
     fonts: fontsOf(page, operators),
-    curves: operators.fnArray.filter((operator) => operator === OPS.constructPath).length,
+    /** Lines, fills and strokes: rules, the QR code, drawn signatures. */
+    paths: operators.fnArray.filter((operator) => operator === OPS.constructPath).length,
     qr: jsqr(image.data, image.width, image.height)?.data ?? null,
   }
 }
@@ -81,10 +82,7 @@ function inkOf(item, image, viewport) {
 function fontsOf(page, { fnArray, argsArray }) {
   const names = new Set()
   fnArray.forEach((operator, index) => {
-    if (operator === OPS.setFont) names.add(argsArray[index][0])
+    if (operator === OPS.setFont) names.add(page.commonObjs.get(argsArray[index][0]).name)
   })
-  return [...names].map((name) => {
-    const font = page.commonObjs.get(name)
-    return { name: font.name, isEmbedded: font.missingFile === false && font.data !== undefined }
-  })
+  return [...names]
 }

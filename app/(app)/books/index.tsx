@@ -1,0 +1,3 @@
+import { BooksScreen } from '@/modules/books/books-screen'
+
+export default BooksScreen

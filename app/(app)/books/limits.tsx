@@ -1,0 +1,3 @@
+import { LimitsScreen } from '@/modules/limits/limits-screen'
+
+export default LimitsScreen

@@ -1,0 +1,3 @@
+import { ContainersScreen } from '@/modules/containers/containers-screen'
+
+export default ContainersScreen

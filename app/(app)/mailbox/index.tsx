@@ -1,0 +1,3 @@
+import { MailboxScreen } from '@/modules/pickups/mailbox-screen'
+
+export default MailboxScreen

@@ -1,0 +1,3 @@
+import { PickupsScreen } from '@/modules/pickups/pickups-screen'
+
+export default PickupsScreen

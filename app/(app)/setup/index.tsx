@@ -1,0 +1,3 @@
+import { SetupScreen } from '@/modules/setup/setup-screen'
+
+export default SetupScreen
