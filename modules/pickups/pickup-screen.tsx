@@ -30,7 +30,7 @@ export function PickupScreen({ id }: { id: string }) {
       await call(issuePickup, { params: { id: data.id }, body: { version: data.version } })
       await reply.refresh()
     } catch (error) {
-      setRefusal(showProblem(error, {}))
+      setRefusal(showProblem(error))
     }
   }
   return (

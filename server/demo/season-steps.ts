@@ -1,13 +1,12 @@
 import { addDays, daysBetween, localDay } from '@/shared/calendar'
-import { isPositive, multiply, normalise, roundHalfEven } from '@/shared/quantities/decimals'
-import { atSite, machineCalled, pickupPartiesOf, quillbrook, year2025 } from './company'
+import { atSite, machineCalled, quillbrook, siteCalled, year2025 } from './company'
 import { permitStep } from './company-steps'
 import { drainStep } from './drain-steps'
-import { pickupOf } from './pickup-steps'
 import type { DemoStep } from './replay'
 import { reviewFlagsStep, reviewMarksStep } from './review-steps'
 import { seasonEnding } from './season-ending'
-import { seasonYard, type SeasonYard } from './season-yard'
+import { seasonPickup } from './season-pickup'
+import { seasonYard, type Season } from './season-yard'
 import { seededRandom } from './seeded-random'
 
 /** The fixed year and its sequel are over by then. */
@@ -16,11 +15,8 @@ const seasonDays = 182
 /** The last days are arranged, so that there is something to see: see season-ending.ts. */
 const arrangedDays = 14
 
-export type Season = {
-  yard: SeasonYard
-  random: () => number
-  today: (site: string) => string
-}
+/** Osk Landing has drums, which go when there is no room in them. */
+const totes: Record<string, string> = { S1: 'C-101', S3: 'C-301' }
 
 /**
  * The 26 weeks before a day, drawn from a seed: drains like those of the fixed year, as often as their month has
@@ -35,7 +31,7 @@ export function seasonSteps(
   const season: Season = {
     yard: seasonYard(litres),
     random: seededRandom(seed),
-    today: (site) => localDay(now, atSiteZone(site)),
+    today: (site) => localDay(now, siteCalled(site).timeZone),
   }
   const start = laterOf(addDays(season.today('S1'), -seasonDays), earliest)
   if (daysBetween(start, season.today('S1')) < 2 * arrangedDays) return []
@@ -54,8 +50,8 @@ function daysOf(site: string, start: string, season: Season): DemoStep[] {
   const steps: DemoStep[] = []
   for (let day = start; day < end; day = addDays(day, 1)) {
     // A tote is sent off early, but not so late that it would stand empty at the end.
-    const isFull = yard.toShip(site).some((code) => /01$/.test(code) && yard.share(code) > 0.85)
-    if (isFull && site !== 'S2' && daysBetween(day, end) > 40) {
+    const isFull = yard.share(totes[site] ?? '') > 0.85
+    if (isFull && daysBetween(day, end) > 40) {
       steps.push(...seasonPickup(site, day, yard, random))
     }
     if (day === addDays(end, -45) && site === 'S1') {
@@ -97,7 +93,7 @@ function chanceOf(site: string, day: string): number {
 }
 
 /** A drain of the fixed year again, half a unit more or less. */
-export function likeLastYear(site: string, random: () => number) {
+function likeLastYear(site: string, random: () => number) {
   const own = year2025.drains.filter(
     ({ machine, by }) => machineCalled(machine).site === site && by !== 'Teo Marbach',
   )
@@ -105,49 +101,6 @@ export function likeLastYear(site: string, random: () => number) {
   if (drain === undefined) throw new Error(`${site} had no drains`)
   const value = Number(drain.value) + (Math.floor(random() * 3) - 1) / 2
   return { ...drain, value: Math.max(1, value) }
-}
-
-/** Planned, issued and signed on one morning; received and settled in the days after. */
-export function seasonPickup(
-  site: string,
-  day: string,
-  yard: SeasonYard,
-  random: () => number,
-  containers = yard.toShip(site),
-): DemoStep[] {
-  if (containers.length === 0) return []
-  yard.empty(containers)
-  const pickup = pickupOf(site, `${containers.join(' ')} on ${day}`)
-  const at = (days: number, time: string) => atSite(site, addDays(day, days), time)
-  // Half a per cent up or down: a meter is not a pail.
-  const factor = (0.985 + random() * 0.03).toFixed(4)
-  return [
-    pickup.plan(
-      at(0, '06:20'),
-      day,
-      containers.map((container) => ({ container })),
-    ),
-    pickup.issue(at(0, '06:40')),
-    ...pickup.sign(at(0, '07:05')),
-    pickup.receive(at(2, '11:10'), addDays(day, 1), '', (line) => receivedOf(line.line, factor)),
-    pickup.settle(at(4, '11:30')),
-  ]
-}
-
-/** What a facility says it received: litres by its meter, solids as they were shipped. */
-export function receivedOf(
-  line: { shippedLitres: string; shippedKilograms: string; pieces: number },
-  factor: string,
-) {
-  const isFluid = isPositive(line.shippedLitres)
-  return {
-    quantity: isFluid
-      ? { value: roundHalfEven(multiply(line.shippedLitres, factor), 1), unit: 'L' as const }
-      : { value: normalise(line.shippedKilograms), unit: 'kg' as const },
-    pieces: line.pieces,
-    method: isFluid ? ('facility-meter' as const) : ('count' as const),
-    note: '',
-  }
 }
 
 /** An officer goes through flags and marks every four weeks, the last time two weeks ago. */
@@ -180,8 +133,4 @@ function permitsUntil(today: string): DemoStep[] {
 
 function laterOf(a: string, b: string): string {
   return a > b ? a : b
-}
-
-function atSiteZone(site: string): string {
-  return quillbrook.sites.find(({ code }) => code === site)?.timeZone ?? 'UTC'
 }

@@ -7,6 +7,14 @@ const litresPer = { gal_us: 3.785411784, L: 1 }
 /** What the season's plan takes to be in each container: it decides where a drain goes, no figure rests on it. */
 export type SeasonYard = ReturnType<typeof seasonYard>
 
+/** What the plan of a season is made with. */
+export type Season = {
+  yard: SeasonYard
+  random: () => number
+  /** The last day of the season, as the site's calendar has it. */
+  today: (site: string) => string
+}
+
 /** @param litres what stands in each container, by code */
 export function seasonYard(litres: ReadonlyMap<string, number>) {
   const levels = new Map(litres)
