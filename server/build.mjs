@@ -7,11 +7,11 @@ import { compareSources, filesBelow, root } from './source-digest.mjs'
 /** Set-up that `npm start` and `npm test` share. Plain Node: it runs before anything is installed. */
 
 /** Installs what the lock file names, when node_modules is missing or belongs to another lock file. */
-export async function installWhenNeeded(say) {
+export async function installWhenNeeded(tell) {
   const lock = compareSources('install', ['package-lock.json'])
   const installed = join(root, 'node_modules/.package-lock.json')
   if (existsSync(installed) && (!lock.isChanged || isInstalled(installed))) return lock.keep()
-  say('Installing packages (once, about two minutes) ...')
+  tell('Installing packages (once, about two minutes) ...')
   await run('npm', ['ci', '--no-audit', '--no-fund', '--loglevel=error'])
   lock.keep()
 }
@@ -27,7 +27,7 @@ function isInstalled(installed) {
 }
 
 /** Bundles the server's entry points when their sources changed. */
-export async function buildServerWhenNeeded(say) {
+export async function buildServerWhenNeeded(tell) {
   const sources = compareSources('server', [
     'server',
     'db',
@@ -37,7 +37,7 @@ export async function buildServerWhenNeeded(say) {
     'tsconfig.json',
   ])
   if (existsSync(join(root, 'dist/server/main.mjs')) && !sources.isChanged) return
-  say('Building the server ...')
+  tell('Building the server ...')
   const { build } = await import('esbuild')
   rmSync(join(root, 'dist/server'), { recursive: true, force: true })
   await build({
@@ -60,7 +60,7 @@ export async function buildServerWhenNeeded(say) {
 }
 
 /** Exports the web app when its sources changed, and compresses what a browser will ask for. */
-export async function buildWebWhenNeeded(say) {
+export async function buildWebWhenNeeded(tell) {
   const sources = compareSources('web', [
     'app',
     'modules',
@@ -74,7 +74,7 @@ export async function buildWebWhenNeeded(say) {
   ])
   const folder = join(root, 'dist/web')
   if (existsSync(join(folder, 'index.html')) && !sources.isChanged) return
-  say('Building the web app (once, one to two minutes) ...')
+  tell('Building the web app (once, one to two minutes) ...')
   // Made beside the old one: a build that fails, or is stopped, leaves what works in place.
   const draft = join(root, 'dist/web-draft')
   rmSync(draft, { recursive: true, force: true })

@@ -53,7 +53,7 @@ export type FieldProps = Labels & {
 }
 
 /** One line of text with its label. Dates and times are typed or picked (`type="date"`, `type="time"`). */
-export function Field(props: FieldProps) {
+export function Field({ ref, ...props }: FieldProps) {
   const ids = useLabelIds(props.id)
   const style = useControlStyle(props.error !== undefined)
   const isFigure = props.inputMode === 'decimal' || props.inputMode === 'numeric'
@@ -61,7 +61,7 @@ export function Field(props: FieldProps) {
     <Labelled ids={ids} labels={props}>
       <View style={{ flexDirection: 'row', alignItems: 'center', gap: gap.small }}>
         <input
-          ref={props.ref}
+          ref={ref}
           id={ids.control}
           name={props.name}
           type={props.type ?? 'text'}

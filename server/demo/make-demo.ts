@@ -10,9 +10,10 @@ import { administrator, companySteps } from './company-steps'
 import { demoId } from './demo-id'
 import { demoPassword } from './demo-people'
 import { replay } from './replay'
-import { scriptedSteps } from './scripted-steps'
+import { springStories } from './spring-stories'
 import { yearDrainSteps } from './year-drains'
 import { yearPickupSteps } from './year-pickups'
+import { yearStories } from './year-stories'
 
 /**
  * Makes the demo company on an empty database, by the acts people use, all in one transaction: a process that is
@@ -35,7 +36,8 @@ export async function makeDemo(
       ...companySteps(demoPassword),
       ...yearDrainSteps(),
       ...yearPickupSteps(),
-      ...scriptedSteps(),
+      ...yearStories(),
+      ...springStories(),
     ]
     await replay(
       tx,

@@ -4,7 +4,7 @@ import type { DemoStep } from './replay'
 
 /** Left on Teo's phone when he left on 31 August, and sent when he handed it in. */
 const late = ['D-25-0052', 'D-25-0063']
-/** Booked into the wrong drum at first: see scripted-steps.ts. */
+/** Booked into the wrong drum at first: see year-stories.ts. */
 export const misbooked = { id: 'D-25-0062', into: 'C-202' }
 
 /** The drains of 2025, each on its day, recorded minutes after it was poured. */
