@@ -1,5 +1,6 @@
 import { eq, sql } from 'drizzle-orm'
 import type { Database, Transaction } from '@/db/client'
+import { listContainersWithContents } from '@/db/queries/containers'
 import { outbox } from '@/db/schema/trail'
 import { asService } from '@/db/tenancy'
 import type { ActContext } from '../act-context'
@@ -9,7 +10,8 @@ import { organisationId, personCalled, quillbrook } from './company'
 import { administrator, companySteps } from './company-steps'
 import { demoId } from './demo-id'
 import { demoPassword } from './demo-people'
-import { replay } from './replay'
+import { replay, type DemoStep } from './replay'
+import { seasonSteps } from './season-steps'
 import { springStories } from './spring-stories'
 import { yearDrainSteps } from './year-drains'
 import { yearPickupSteps } from './year-pickups'
@@ -18,13 +20,13 @@ import { yearStories } from './year-stories'
 /**
  * Makes the demo company on an empty database, by the acts people use, all in one transaction: a process that is
  * killed on the way leaves nothing, and where there is an organisation nothing is made.
- * @param until what would happen later is left out
+ * @param given what would happen after `until` is left out; without a seed the fixed year and its sequel stand alone
  * @returns whether it was made
  */
 export async function makeDemo(
   db: Database,
   tools: Pick<ActContext, 'log' | 'publicUrl'>,
-  until: Date,
+  given: { until: Date; seed?: string },
 ): Promise<boolean> {
   const passwordHash = await hashPassword(demoPassword)
   return asService(db, async (tx) => {
@@ -32,18 +34,22 @@ export async function makeDemo(
     await tx.execute(sql`select pg_advisory_xact_lock(20250309)`)
     if (await hasOrganisation(tx)) return false
     await foundCompany(tx, passwordHash)
-    const fixed = [
-      ...companySteps(demoPassword),
-      ...yearDrainSteps(),
-      ...yearPickupSteps(),
-      ...yearStories(),
-      ...springStories(),
-    ]
+    const happened = (steps: readonly DemoStep[]) => steps.filter(({ at }) => at <= given.until)
     await replay(
       tx,
       tools,
-      fixed.filter(({ at }) => at <= until),
+      happened([
+        ...companySteps(demoPassword),
+        ...yearDrainSteps(),
+        ...yearPickupSteps(),
+        ...yearStories(),
+        ...springStories(),
+      ]),
     )
+    if (given.seed !== undefined) {
+      const steps = seasonSteps(given.until, given.seed, await litresByContainer(tx))
+      await replay(tx, tools, happened(steps))
+    }
     // Nobody is behind these addresses: what was mailed stays in the local mailbox, also where a mail server is set.
     await tx.execute(sql`select set_config('role', 'ebbmark_service', true)`)
     await tx.update(outbox).set({ state: 'kept' }).where(eq(outbox.organisationId, organisationId))
@@ -70,4 +76,10 @@ async function foundCompany(tx: Transaction, passwordHash: string): Promise<void
       isDemo: true,
     },
   )
+}
+
+/** What stands in each container when the season begins: only its plan looks at it. */
+async function litresByContainer(tx: Transaction): Promise<Map<string, number>> {
+  const found = await listContainersWithContents(tx, { siteIds: null })
+  return new Map(found.map(({ container, litres }) => [container.code, Number(litres)]))
 }

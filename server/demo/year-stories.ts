@@ -104,7 +104,11 @@ function ownRule(): DemoStep[] {
 /** What officers looked at, and what they found. */
 function reviews(): DemoStep[] {
   return [
-    reviewFlagsStep('S1', '2025-01-08', 'Looked at with the yard plan: under the lean-to, as built'),
+    reviewFlagsStep(
+      'S1',
+      '2025-01-08',
+      'Looked at with the yard plan: under the lean-to, as built',
+    ),
     reviewFlagsStep('S3', '2025-01-08', 'C-301 stands in the bunded store'),
     reviewFlagsStep('S2', '2025-10-14', 'The pickup of 13 October took all six drums down'),
     reviewFlagsStep('S2', '2026-01-05', 'Year-end pickup taken on 30 December'),

@@ -25,6 +25,9 @@ import type { TestApp } from './test-app'
 export type Member = {
   id: string
   organisationId: string
+  email: string
+  /** The Authorization header of a request now. */
+  bearer: () => string
   get: (path: string) => Test
   post: (path: string, body?: object) => Test
   put: (path: string, body: object, version: string) => Test
@@ -41,6 +44,11 @@ export type TestOrganisation = {
 
 export type TestSite = { id: string; code: string; organisation: TestOrganisation }
 
+/** Everybody's password in the tests, and its hash: hashing takes longer than most tests. */
+export const knownPassword = 'an invented password'
+const knownHash =
+  '$argon2id$v=19$m=19456,t=2,p=1$Euk18hRByi2q8uR6+x+mKA$zA59P3MDG+3hluu81cBADBbeQ84YhywGgcKil/7RA6Y'
+
 let made = 0
 /** A short code that no other record of this test file has. */
 export function nextCode(prefix: string): string {
@@ -52,6 +60,7 @@ export function nextCode(prefix: string): string {
 export async function anOrganisation(test: TestApp): Promise<TestOrganisation> {
   const organisationId = randomUUID()
   const personId = randomUUID()
+  const email = `${personId}@works.example.org`
   const found = await asService(test.opened.db, async (tx) => {
     await makeOrganisation(tx, test.services, {
       organisationId,
@@ -59,15 +68,15 @@ export async function anOrganisation(test: TestApp): Promise<TestOrganisation> {
       organisationName: `Invented Works ${organisationId.slice(0, 4)}`,
       phone: '555-0100',
       name: 'Ada Invented',
-      email: `${personId}@works.example.org`,
-      passwordHash: 'none',
+      email,
+      passwordHash: knownHash,
       isDemo: false,
     })
     return tx.select().from(streamTable).where(eq(streamTable.organisationId, organisationId))
   })
   return {
     id: organisationId,
-    administrator: await signedIn(test, { id: personId, organisationId }),
+    administrator: await signedIn(test, { id: personId, organisationId, email }),
     streams: Object.fromEntries(found.map(({ code, id }) => [code, id])),
   }
 }
@@ -75,7 +84,7 @@ export async function anOrganisation(test: TestApp): Promise<TestOrganisation> {
 /** A session as sign-in opens one, without the password's work. */
 async function signedIn(
   test: TestApp,
-  person: { id: string; organisationId: string },
+  person: { id: string; organisationId: string; email: string },
 ): Promise<Member> {
   const sessionId = randomUUID()
   const { db } = test.opened
@@ -96,6 +105,7 @@ async function signedIn(
   const bearer = () => `Bearer ${accessToken(test.services.secret, claims, test.services.clock())}`
   return {
     ...person,
+    bearer,
     get: (path) => request(test.app).get(`/api${path}`).set('Authorization', bearer()),
     post: (path, body) =>
       request(test.app).post(`/api${path}`).set('Authorization', bearer()).send(body),
@@ -120,21 +130,22 @@ export async function signInAs(
   siteIds: readonly string[] = [],
 ): Promise<Member> {
   const id = randomUUID()
+  const email = `${id}@works.example.org`
   await organisation.administrator.acts(async (tx, context) => {
-    // Not through the act: hashing a password takes longer than most tests.
+    // Not through the act, which hashes.
     await tx.insert(people).values({
       id,
       organisationId: organisation.id,
       name: `Invented ${role} ${id.slice(0, 4)}`,
-      email: `${id}@works.example.org`,
+      email,
       role,
-      passwordHash: 'none',
+      passwordHash: knownHash,
       version: randomUUID(),
       createdAt: context.clock(),
     })
     await replacePersonSites(tx, context, id, siteIds)
   })
-  return signedIn(test, { id, organisationId: organisation.id })
+  return signedIn(test, { id, organisationId: organisation.id, email })
 }
 
 /** A site with its open book and the rules of its profile; of a fresh organisation unless one is given. */
