@@ -184,7 +184,9 @@ test('a plan is changed as a whole, and only from the version that was read', as
 
 test('lists by stage are full pages, and a return is due after the last day at the site', async () => {
   const own = await aPickupYard(product)
+  const before = product.clock.now
   const left = await signedOut(own, [await aFilledDrum(own, { value: '10', unit: 'gal_us' })])
+  product.clock.now = new Date('2025-03-10T18:01:00Z')
   const waiting = await planned(own, [await aContainer(own.site)])
   expect(left.returnDueOn).toBe('2025-04-09')
   const stages = async (stage: string) =>
@@ -192,7 +194,6 @@ test('lists by stage are full pages, and a return is due after the last day at t
       (row: { id: string; stage: string }) => [row.id, row.stage],
     )
   expect(await stages('planned')).toEqual([[waiting.id, 'planned']])
-  const before = product.clock.now
   // 23:30 on 9 April in Chicago, then half past midnight.
   product.clock.now = new Date('2025-04-10T04:30:00Z')
   expect(await stages('return-due')).toEqual([])

@@ -120,6 +120,7 @@ const kinds: Kind[] = [
 /** Set-up records, people, permits and the trail. */
 export const setUpRequests: RequestTable = {
   ...Object.fromEntries(kinds.flatMap((kind) => sixOf(kind))),
+  readSite: { reach: 'site', make: ({ site }) => ({ params: { id: site.id } }) },
   addPermit: {
     reach: 'organisation',
     make: ({ hauler }) => ({ params: { id: hauler.id }, body: aPermitBody() }),
