@@ -3,7 +3,7 @@ import { atSite, machineCalled, siteCalled } from './company'
 import { drainStep } from './drain-steps'
 import { pickupOf } from './pickup-steps'
 import type { DemoStep } from './replay'
-import { receivedOf } from './season-pickup'
+import { receivedOf, seasonPickup } from './season-pickup'
 import type { Season } from './season-yard'
 
 /**
@@ -15,10 +15,12 @@ export function seasonEnding(season: Season): DemoStep[] {
 }
 
 /** Brindle Hollow: C-101 fills up; one drain of a small lift looks like litres typed as gallons. */
-function yardAtWork({ yard, today }: Season): DemoStep[] {
+function yardAtWork({ yard, random, today }: Season): DemoStep[] {
   const on = (daysAgo: number) => addDays(today('S1'), -daysAgo)
+  const before = yard.share('C-101') > 0.8 ? seasonPickup('S1', on(14), yard, random) : []
   const drain = drainsOf({ yard, on, site: 'S1', by: 'Ines Okerlund' })
   const steps = [
+    ...before,
     ...drain('M-04', '18', 1, '14:20', [
       { code: 'looks-like-litres', answer: 'It is gallons' },
       { code: 'more-than-machine-holds', answer: 'The meter says so' },

@@ -164,7 +164,7 @@ describe('the fixed year of the demo company', () => {
     const pickup = await get<Pickup>(`/pickups/${row?.id}`)
     expect(pickup).toMatchObject({
       stage: 'settled',
-      difference: { percent: '-13.40', exceeds: true },
+      difference: { percent: '-13.4', exceeds: true },
       settled: { cause: 'free-water-decanted', by: { name: 'Odile Fenwright' } },
     })
     expect(pickup.settled?.note).toContain('lab slip')
