@@ -130,8 +130,20 @@ export const bookLine = z.object({
 })
 export type BookLine = z.infer<typeof bookLine>
 
+/** A stream, a holder and a stream with a dot between, or all fluids. */
+function isGroup(value: string): boolean {
+  const parts = value.split('.')
+  return (
+    value === 'all-fluids' ||
+    (parts.length <= 2 && parts.every((part) => id.safeParse(part).data === part))
+  )
+}
+
 export const linesQuery = totalsQuery.extend({
-  groupId: z.string().max(120).optional(),
+  groupId: z
+    .string()
+    .refine((value) => isGroup(value), 'not-a-group')
+    .optional(),
   month: z
     .string()
     .regex(/^\d{4}-(0[1-9]|1[0-2])$/)

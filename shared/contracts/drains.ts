@@ -2,12 +2,13 @@ import { z } from 'zod'
 import { measuringMethods } from '../quantities/methods'
 import { defineContract } from './define-contract'
 import {
+  day,
   decimal,
   id,
   idParams,
   instant,
-  lines,
   line,
+  lines,
   mark,
   mass,
   named,
@@ -15,6 +16,7 @@ import {
   pageQuery,
   percentDecimal,
   requiredLine,
+  revision,
   shownQuantity,
   volume,
 } from './values'
@@ -75,7 +77,7 @@ export const amendReasons = [
   'other',
 ] as const
 export const amendDrainBody = drainFacts.extend({
-  expectedRevision: z.number().int().min(1),
+  expectedRevision: revision,
   reason: z.strictObject({ code: z.enum(amendReasons), text: line(300).default('') }),
   answers,
 })
@@ -162,10 +164,10 @@ export const listDrains = defineContract({
     siteId: id.optional(),
     machineId: id.optional(),
     containerId: id.optional(),
-    from: z.iso.date().optional(),
-    to: z.iso.date().optional(),
+    from: day.optional(),
+    to: day.optional(),
     state: z.enum(['standing', 'struck', 'needs-a-look']).optional(),
-    search: z.string().trim().max(60).optional(),
+    search: line(60).optional(),
     ...pageQuery,
   }),
   reply: page(drainRow),
@@ -237,7 +239,7 @@ export const strikeDrain = defineContract({
   tag,
   access: 'strike-drain',
   params: idParams,
-  body: z.strictObject({ expectedRevision: z.number().int().min(1), reason: requiredLine(300) }),
+  body: z.strictObject({ expectedRevision: revision, reason: requiredLine(300) }),
   reply: drain,
   problems: ['not-found', 'changed-under-you', 'already-struck'],
 })

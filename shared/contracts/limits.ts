@@ -1,8 +1,18 @@
 import { z } from 'zod'
-import { ruleDefinition } from '../rules/definition'
+import { ruleDefinition, ruleStreams } from '../rules/definition'
 import { ruleFinding } from '../rules/finding'
 import { defineContract } from './define-contract'
-import { id, idParams, instant, named, page, pageQuery, requiredLine } from './values'
+import {
+  id,
+  idParams,
+  instant,
+  line,
+  named,
+  page,
+  pageQuery,
+  requiredLine,
+  revision,
+} from './values'
 
 const tag = 'limits'
 
@@ -12,7 +22,7 @@ export const rule = z.object({
   origin: z.enum(['pack', 'own']),
   definition: ruleDefinition,
   enabled: z.boolean(),
-  version: z.number().int(),
+  version: revision,
   changedAt: instant,
   changedBy: named.nullable(),
   changeReason: z.string(),
@@ -67,6 +77,12 @@ export const ownRuleBody = ruleDefinition
     consequence: true,
     citation: true,
   })
+  .extend({
+    title: requiredLine(160),
+    consequence: line(300),
+    citation: line(160),
+    streams: ruleStreams.extend({ classes: z.array(requiredLine(60)).max(20) }),
+  })
   .strict()
 export const createRule = defineContract({
   name: 'createRule',
@@ -88,7 +104,7 @@ export const changeRule = defineContract({
   tag,
   access: 'change-rules',
   params: idParams,
-  body: ownRuleBody.extend({ version: z.number().int(), reason: requiredLine(300) }),
+  body: ownRuleBody.extend({ version: revision, reason: requiredLine(300) }),
   reply: rule,
   problems: ['not-found', 'pack-rule-fixed', 'changed-under-you'],
 })
@@ -103,7 +119,7 @@ export const switchRule = defineContract({
   body: z.strictObject({
     enabled: z.boolean(),
     reason: requiredLine(300),
-    version: z.number().int(),
+    version: revision,
   }),
   reply: rule,
   problems: ['not-found', 'changed-under-you'],

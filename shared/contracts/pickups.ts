@@ -16,6 +16,7 @@ import {
   pageQuery,
   quantity,
   requiredLine,
+  revision,
   shownQuantity,
 } from './values'
 
@@ -40,7 +41,7 @@ const plan = {
 }
 export const planPickupBody = z.strictObject({ id, siteId: id, ...plan })
 export type PlanPickupBody = z.infer<typeof planPickupBody>
-export const changePickupBody = z.strictObject({ version: z.number().int(), ...plan })
+export const changePickupBody = z.strictObject({ version: revision, ...plan })
 
 export const receivedMethods = [
   'weighbridge',
@@ -152,7 +153,7 @@ export const pickupRow = z.object({
 export type PickupRow = z.infer<typeof pickupRow>
 
 export const pickup = pickupRow.extend({
-  version: z.number().int(),
+  version: revision,
   timeZone: z.string(),
   orderNumber: z.string(),
   note: z.string(),
@@ -251,7 +252,7 @@ export const issuePickup = defineContract({
   tag,
   access: 'issue-pickup',
   params: idParams,
-  body: z.strictObject({ version: z.number().int() }),
+  body: z.strictObject({ version: revision }),
   reply: pickup,
   problems: [
     'not-found',
@@ -273,7 +274,7 @@ export const signPickupBody = z.strictObject({
   /** Hash of the document that was read: another one means it must be read again. */
   documentSha256: z.string().regex(/^[0-9a-f]{64}$/),
   dispute: lines(500).default(''),
-  version: z.number().int(),
+  version: revision,
 })
 export type SignPickupBody = z.infer<typeof signPickupBody>
 export const signPickup = defineContract({
@@ -298,7 +299,7 @@ export const signPickup = defineContract({
 })
 
 export const receivePickupBody = z.strictObject({
-  version: z.number().int(),
+  version: revision,
   receivedOn: day,
   ticket: line(60).default(''),
   note: lines(1000).default(''),
@@ -342,7 +343,7 @@ export const settlePickup = defineContract({
   access: 'settle-pickup',
   params: idParams,
   body: z.strictObject({
-    version: z.number().int(),
+    version: revision,
     cause: z.enum(settleCauses),
     note: lines(1000).default(''),
   }),
@@ -358,7 +359,7 @@ export const voidPickup = defineContract({
   tag,
   access: 'void-pickup',
   params: idParams,
-  body: z.strictObject({ version: z.number().int(), reason: requiredLine(500) }),
+  body: z.strictObject({ version: revision, reason: requiredLine(500) }),
   reply: pickup,
   problems: ['not-found', 'changed-under-you', 'wrong-stage'],
 })

@@ -8,6 +8,9 @@ export const noReply = z.undefined()
 
 /** Read whatever its case, and compared in one. */
 export const id = z.uuid().toLowerCase()
+
+/** Counts the changes of a record; no greater than the database counts. */
+export const revision = z.number().int().min(0).max(2_147_483_647)
 export const idParams = z.strictObject({ id })
 
 /** Any exact decimal, at most 20 digits before and 18 after the point: what numeric(38,18) holds. */

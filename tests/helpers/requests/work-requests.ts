@@ -8,8 +8,9 @@ import {
   planned,
   received,
   receiveBody,
+  signBody,
+  signedOut,
 } from '../pickups'
-import { signBody, signedOut } from '../pickups'
 import type { AskedWorld, RequestTable } from './asked-request'
 
 async function aDrainBody({ site }: AskedWorld, more: Record<string, unknown> = {}) {
