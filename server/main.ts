@@ -13,6 +13,7 @@ import { createApp } from './create-app'
 import { errorForLog } from './error-for-log'
 import { openDemo } from './demo/open-demo'
 import { usualRates } from './http/rate-limits'
+import { runLimitsJob } from './limits/run-limits-job'
 import { runMailJob } from './mail/run-mail-job'
 import type { SendMail } from './mail/send-outbox'
 import { smtpSender } from './mail/smtp'
@@ -47,9 +48,11 @@ async function main(): Promise<void> {
     })
     const server = await listen(app, config)
     const mail = runMailJob(services, mailSender(config))
+    const limits = runLimitsJob(services)
     stopOnSignal(async () => {
       await closed(server)
       await mail.stop()
+      await limits.stop()
       await opened.close()
     })
     announce(server, config, services.demo)

@@ -8,6 +8,8 @@ export type TotalsFilter = {
   by: Grouping
   siteIds: readonly string[] | null
   streamId?: string | undefined
+  /** Leaves filters and other solids out. */
+  fluidsOnly?: boolean
   /** First day not counted. */
   until: string
 }
@@ -45,6 +47,9 @@ function classified(filter: TotalsFilter): SQL {
       ? sql`true`
       : sql`a.site_id = any(${sql.param(`{${filter.siteIds.join(',')}}`)}::uuid[])`
   const ofStream = filter.streamId === undefined ? sql`true` : sql`m.stream_id = ${filter.streamId}`
+  const ofKind = filter.fluidsOnly
+    ? sql`m.stream_id in (select id from streams where kind = 'fluid')`
+    : sql`true`
   const inward: SQL =
     filter.by === 'facility'
       ? sql`'receipt'`
@@ -66,7 +71,7 @@ function classified(filter: TotalsFilter): SQL {
       select *, from_account_id as account_id, -1 as sign from movements
     ) m
     join accounts a on a.id = m.account_id and (${holders[filter.by]})
-    where ${counted} and ${ofSite} and ${ofStream} and m.occurred_on < ${filter.until}`
+    where ${counted} and ${ofSite} and ${ofStream} and ${ofKind} and m.occurred_on < ${filter.until}`
 }
 
 /** Sums by holder, stream, month and side. For `stream` the holder is the stream itself. */

@@ -35,6 +35,8 @@ export async function listBookLinesOf(
     siteIds: sitesSeen(context, query.siteId),
     streamId,
     holderId,
+    // A figure of all fluids counts no filters.
+    fluidsOnly: streamId === undefined,
     ...spanOf(query),
     side: query.side === 'opening' || query.side === 'closing' ? 'any' : query.side,
     after:

@@ -3,14 +3,22 @@ import type { Transaction } from '@/db/client'
 import { listNamedMovements } from '@/db/queries/totals'
 import { withOffset } from '@/shared/calendar'
 import type { Totals, TotalsQuery } from '@/shared/contracts/books'
-import { multiply, normalise } from '@/shared/quantities/decimals'
+import { isDecimal, multiply, normalise } from '@/shared/quantities/decimals'
 import type { ActContext } from '../act-context'
 import { getSite, sitesSeen } from '../sites-seen'
 import { readTotalsOf } from './totals'
 
 /** UTF-8 with its mark, one header row, and no cell that a spreadsheet would take for a formula. */
 function csvOf(header: string[], rows: (string | number)[][]): string {
-  return stringify([header, ...rows], { bom: true, escape_formulas: true })
+  return stringify([header, ...rows.map((row) => row.map(guarded))], { bom: true })
+}
+
+/** What a spreadsheet takes for the start of a formula, in both widths, and what it skips before one. */
+const formulaStart = /^[=+\-@\t\r\n\uff1d\uff0b\uff0d\uff20]/
+
+/** A figure below zero starts with a minus as well, and stays a figure. */
+function guarded(cell: string | number): string | number {
+  return typeof cell === 'string' && formulaStart.test(cell) && !isDecimal(cell) ? `'${cell}` : cell
 }
 
 /** The table on screen, group after group, month by month: shown figures first, exact ones behind. */

@@ -43,6 +43,7 @@ export async function readTotalsOf(
   const rows = await sumByMonth(tx, filter, `${query.year}-01-01`)
   const all = await tx.select().from(streams)
   const groups = groupsOf(rows, all, query)
+  const allFluids = allFluidsOf(groups, query)
   const counted = await countDrains(tx, siteIds, query.year)
   return {
     year: query.year,
@@ -50,7 +51,7 @@ export async function readTotalsOf(
     unit: query.unit,
     site: site === undefined ? null : { id: site.id, name: site.name },
     groups,
-    allFluids: allFluidsOf(groups, query),
+    allFluids,
     drainCounts: monthsOf(query.year).map((month) => {
       const found = counted.find((row) => row.month === month)
       return {
@@ -60,7 +61,9 @@ export async function readTotalsOf(
         absorbentKilograms: normalise(found?.absorbentKilograms ?? '0'),
       }
     }),
-    roundingShows: groups.some(roundingShows),
+    roundingShows:
+      groups.some(roundingShows) ||
+      (allFluids !== null && (roundingShows(allFluids) || sumsMiss(groups, allFluids))),
     asOf: context.clock().toISOString(),
   }
 }
@@ -241,10 +244,25 @@ function shareOfEstimates(rows: readonly TotalsRow[]): string | null {
 }
 
 /** Do the shown months miss the shown total, because each figure is rounded once? */
-function roundingShows(group: TotalsGroup): boolean {
+function roundingShows(group: Pick<TotalsGroup, 'total' | 'months'>): boolean {
   return (['in', 'out', 'adjusted'] as const).some((side) => {
     const total = group.total[side].shown
     if (total === null) return false
     return compare(sum(group.months.map((month) => month[side].shown ?? '0')), total) !== 0
+  })
+}
+
+/** Do the shown totals of the fluids miss the shown total of all of them? */
+function sumsMiss(
+  groups: readonly TotalsGroup[],
+  allFluids: NonNullable<Totals['allFluids']>,
+): boolean {
+  const fluids = groups.filter(({ kind }) => kind === 'fluid')
+  return (['in', 'out', 'adjusted'] as const).some((side) => {
+    const total = allFluids.total[side].shown
+    return (
+      total !== null &&
+      compare(sum(fluids.map((group) => group.total[side].shown ?? '0')), total) !== 0
+    )
   })
 }

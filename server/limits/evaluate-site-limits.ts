@@ -8,7 +8,7 @@ import { ruleFinding, type RuleFinding } from '@/shared/rules/finding'
 import type { ActContext } from '../act-context'
 import { gatherSiteFacts } from './site-facts'
 
-type Context = Pick<ActContext, 'person' | 'newId' | 'clock'>
+type Context = Pick<ActContext, 'newId' | 'clock'>
 type RuleRow = typeof rules.$inferSelect
 type FlagRow = typeof flags.$inferSelect
 
@@ -39,9 +39,16 @@ export async function evaluateSiteLimits(
     .from(flags)
     .where(and(eq(flags.siteId, siteId), isNull(flags.endedAt)))
   for (const { row, definition } of read) {
-    for (const finding of evaluateRule(definition, facts)) {
+    const findings = evaluateRule(definition, facts)
+    for (const finding of findings) {
       await keepFlag(tx, context, row, definition, finding, standing)
     }
+    // What is no longer measured has ended as well: an emptied container has no days, a retired one no capacity.
+    const gone = standing.filter(
+      ({ ruleId, periodKey }) =>
+        ruleId === row.id && !findings.some((finding) => finding.periodKey === periodKey),
+    )
+    for (const flag of gone) await endCrossing(tx, context, flag)
   }
 }
 
@@ -90,20 +97,24 @@ async function raiseFlag(
   finding: RuleFinding,
 ): Promise<void> {
   if (finding.level === 'below') return
-  await tx.insert(flags).values({
-    id: context.newId(),
-    organisationId: rule.organisationId,
-    siteId: rule.siteId,
-    ruleId: rule.id,
-    ruleVersion: rule.version,
-    periodKey: finding.periodKey,
-    level: finding.level,
-    state: 'open',
-    rule: definition,
-    finding,
-    raisedAt: context.clock(),
-    changedAt: context.clock(),
-  })
+  await tx
+    .insert(flags)
+    .values({
+      id: context.newId(),
+      organisationId: rule.organisationId,
+      siteId: rule.siteId,
+      ruleId: rule.id,
+      ruleVersion: rule.version,
+      periodKey: finding.periodKey,
+      level: finding.level,
+      state: 'open',
+      rule: definition,
+      finding,
+      raisedAt: context.clock(),
+      changedAt: context.clock(),
+    })
+    // Somebody else has just raised it: one crossing, one flag.
+    .onConflictDoNothing()
 }
 
 /** The measure is below the warn line again: the flag stays for its review, its crossing is over. */
