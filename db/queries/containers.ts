@@ -77,17 +77,24 @@ export async function listContainersWithContents(
 export async function listFillings(tx: Transaction, containerIds: readonly string[]) {
   if (containerIds.length === 0) return []
   const result = await tx.execute(sql`
-    with moves as (
-      select a.container_id, m.line_no, m.occurred_on, m.is_estimate,
-        (m.to_account_id = a.id) as is_in,
-        sum(case when m.to_account_id = a.id then m.litres + m.kilograms + m.pieces
-                 else -(m.litres + m.kilograms + m.pieces) end)
-          over (partition by a.container_id order by m.line_no) as standing
-      from ${accounts} a
-      join ${movements} m on m.from_account_id = a.id or m.to_account_id = a.id
+    with own as (
+      select a.id, a.container_id from ${accounts} a
+      join ${balances} b on b.account_id = a.id
       where a.container_id = any(${sql.param(`{${containerIds.join(',')}}`)}::uuid[])
-        and m.reverses is null
-        and not exists (select 1 from ${movements} mirror where mirror.reverses = m.id)
+      group by a.id, a.container_id
+      having sum(b.litres + b.kilograms + b.pieces) > 0
+    ), sides as (
+      select own.container_id, m.id, m.line_no, m.occurred_on, m.is_estimate, true as is_in,
+        m.litres + m.kilograms + m.pieces as moved
+      from own join ${movements} m on m.to_account_id = own.id where m.reverses is null
+      union all
+      select own.container_id, m.id, m.line_no, m.occurred_on, m.is_estimate, false,
+        -(m.litres + m.kilograms + m.pieces)
+      from own join ${movements} m on m.from_account_id = own.id where m.reverses is null
+    ), moves as (
+      select sides.*, sum(moved) over (partition by container_id order by line_no) as standing
+      from sides
+      where not exists (select 1 from ${movements} mirror where mirror.reverses = sides.id)
     ), emptied as (
       select container_id, max(line_no) filter (where standing <= 0) as line_no from moves group by container_id
     )

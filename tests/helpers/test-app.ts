@@ -21,9 +21,9 @@ export type TestApp = {
  * that stands still and with rates that no test reaches.
  */
 export async function testApp(
-  given: { now?: string; services?: Partial<AppServices> } = {},
+  given: { now?: string; services?: Partial<AppServices>; opened?: OpenedDatabase } = {},
 ): Promise<TestApp> {
-  const opened = await testDatabase()
+  const opened = given.opened ?? (await testDatabase())
   const clock = { now: new Date(given.now ?? '2025-03-10T18:00:00Z') }
   const services: AppServices = {
     db: opened.db,
