@@ -3,18 +3,18 @@
  * insert carries the password hash or the address it was given, in its parameters, its message and its detail.
  */
 export function errorForLog(error: unknown, depth = 0): Record<string, unknown> {
-  if (!(error instanceof Error)) return { message: String(error) }
-  const isStatement = 'query' in error && 'params' in error
-  const message = isStatement ? `Failed query: ${String(error.query)}` : error.message
-  const where = (error.stack ?? '').split('\n').filter((line) => /^\s+at /.test(line))
+  if (typeof error !== 'object' || error === null || !('message' in error)) {
+    return { message: String(error) }
+  }
+  const { name, message, stack, cause, query } = error as Partial<Error> & { query?: unknown }
+  const isStatement = query !== undefined && 'params' in error
+  const where = (stack ?? '').split('\n').filter((line) => /^\s+at /.test(line))
   return {
-    type: error.name,
-    message,
+    type: name,
+    message: isStatement ? `Failed query: ${String(query)}` : message,
     stack: where.join('\n'),
     ...kept(error, ['code', 'constraint', 'table', 'column', 'routine']),
-    ...(error.cause === undefined || depth > 4
-      ? {}
-      : { cause: errorForLog(error.cause, depth + 1) }),
+    ...(cause === undefined || depth > 4 ? {} : { cause: errorForLog(cause, depth + 1) }),
   }
 }
 

@@ -115,7 +115,7 @@ describe('a drain with a field that cannot be is refused at that field', () => {
       { containerId: its.container.id, volume: { value: '4', unit: 'gal_us' } },
       { containerId: its.container.id, volume: { value: '5', unit: 'gal_us' } },
     ]
-    expectProblem(await post({ legs }), 400, 'legs-do-not-sum', 'legs')
+    expectProblem(await post({ legs }), 400, 'legs-do-not-sum', 'legs.1.volume.value')
     const other = await aContainer(await aSite(product, { organisation: site.organisation }))
     const astray = await post({ legs: [{ containerId: other.id }] })
     expectProblem(astray, 400, 'wrong-site', 'legs.0.containerId')

@@ -173,7 +173,10 @@ describe('an access token', () => {
     ['of no session', () => jwt.sign(claims(), product.services.secret)],
     [
       'without an end',
-      (sid) => jwt.sign({ ...claims(), sid, exp: undefined }, product.services.secret),
+      (sid) => {
+        const { exp: _exp, ...endless } = claims()
+        return jwt.sign({ ...endless, sid }, product.services.secret)
+      },
     ],
     [
       'of another organisation',
@@ -268,12 +271,15 @@ describe('a session', () => {
     expect(browser.jar.token).toBeUndefined()
   })
 
-  test.each(['', 'x', `${randomUUID()}.x`, 'a'.repeat(200), `%00.${'b'.repeat(43)}`])(
-    'is not continued by "%s"',
-    async (token) => {
-      expectProblem(await aBrowser(product, token).refresh(), 401, 'sign-in-required')
-    },
-  )
+  test.each([
+    '',
+    'x',
+    '5b0d6a5e-8a3f-4e0e-9a53-2f0f5a1f6c11.x',
+    'a.much.too.long.one'.repeat(20),
+    '%00.b',
+  ])('is not continued by "%s"', async (token) => {
+    expectProblem(await aBrowser(product, token).refresh(), 401, 'sign-in-required')
+  })
 
   test('ends at sign-out, on this device alone, and the cookie goes', async () => {
     const [here, there] = [await signedIn(), await signedIn()]
