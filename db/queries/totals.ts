@@ -122,7 +122,8 @@ export type LineFilter = TotalsFilter & {
   from: string | undefined
   side: Side | 'any'
   holderId: string | undefined
-  after?: { siteId: string; lineNo: number; occurredOn: string } | undefined
+  /** Movement that the page before ended with. */
+  after?: string | undefined
   limit: number
 }
 
@@ -153,7 +154,8 @@ export async function listLinesOfFigure(
   const after =
     filter.after === undefined
       ? sql`true`
-      : sql`(c.occurred_on, c.site_id, c.line_no) > (${filter.after.occurredOn}::date, ${filter.after.siteId}::uuid, ${filter.after.lineNo}::bigint)`
+      : sql`(c.occurred_on, c.site_id, c.line_no) >
+          (select last.occurred_on, last.site_id, last.line_no from movements last where last.id = ${filter.after})`
   const result = await tx.execute(sql`
     select c.movement_id as "movementId", sum(${sign} * c.litres)::text as "counted",
       sum(${sign} * c.kilograms)::text as "countedKilograms", sum(${sign} * c.pieces)::int as "countedPieces"

@@ -29,7 +29,6 @@ export async function listBookLinesOf(
   if (query.siteId !== undefined) await getSite(tx, context, query.siteId)
   const { holderId, streamId } = groupOf(query)
   const cursor = readCursor(query.cursor)
-  const [lineNo, siteId] = cursor?.id.split('@') ?? []
   const filter: LineFilter = {
     by: query.by,
     siteIds: sitesSeen(context, query.siteId),
@@ -39,10 +38,7 @@ export async function listBookLinesOf(
     fluidsOnly: streamId === undefined,
     ...spanOf(query),
     side: query.side === 'opening' || query.side === 'closing' ? 'any' : query.side,
-    after:
-      cursor === undefined
-        ? undefined
-        : { occurredOn: cursor.at, siteId: siteId ?? '', lineNo: Number(lineNo) },
+    after: cursor?.id,
     limit: query.limit + 1,
   }
   const found = await listLinesOfFigure(tx, filter)
@@ -68,7 +64,7 @@ export async function listBookLinesOf(
     rows,
     next:
       found.length > query.limit && last !== undefined
-        ? writeCursor({ at: last.occurredOn, id: `${last.lineNo}@${last.siteId}` })
+        ? writeCursor({ at: last.occurredAt, id: last.movementId })
         : null,
     sum: normalise(
       { litres: total.litres, kilograms: total.kilograms, pieces: String(total.pieces) }[base],

@@ -107,12 +107,14 @@ function groupsOf(rows: TotalsRow[], all: Stream[], query: TotalsQuery): TotalsG
       },
     ]
   })
-  return groups.sort(inOrder)
+  const mineral = all.find(({ code }) => code === 'mineral')?.id
+  return groups.sort((a, b) => inOrder(a, b, mineral))
 }
 
-/** Fluids first, the mineral stream ahead; then by the holder's name. */
-function inOrder(a: TotalsGroup, b: TotalsGroup): number {
+/** Fluids first, grouped by stream the mineral one ahead; then by name. */
+function inOrder(a: TotalsGroup, b: TotalsGroup, mineral: string | undefined): number {
   if (a.kind !== b.kind) return a.kind === 'fluid' ? -1 : 1
+  if ((a.id === mineral) !== (b.id === mineral)) return a.id === mineral ? -1 : 1
   return a.label.localeCompare(b.label, 'en') || a.streamName.localeCompare(b.streamName, 'en')
 }
 
