@@ -64,6 +64,8 @@ export function Table({
       tabIndex={0}
       style={{
         overflowX: 'auto',
+        // Inside a column of a fixed height it would otherwise shrink to its first row.
+        flexShrink: 0,
         maxWidth: '100%',
         border: `1px solid ${colours.hairline}`,
         borderRadius: 6,
