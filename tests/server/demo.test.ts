@@ -128,6 +128,21 @@ describe('the fixed year of the demo company', () => {
     ])
   })
 
+  test('columns whose shown figures miss their shown total say so', async () => {
+    for (const unit of ['gal_us', 'L'] as const) {
+      const totals = await get<Totals>(`/books/totals?year=2025&unit=${unit}`)
+      const tenths = (shown: string | null) => Math.round(Number(shown) * 10)
+      const misses = totals.groups.some(({ months: shown, total }) =>
+        (['in', 'out', 'adjusted'] as const).some(
+          (side) =>
+            shown.reduce((sum, month) => sum + tenths(month[side].shown), 0) !==
+            tenths(total[side].shown),
+        ),
+      )
+      expect([unit, misses, totals.roundingShows]).toEqual([unit, true, true])
+    }
+  })
+
   test('by stream, container, hauler and facility what closes is what opened, came, left and was adjusted', async () => {
     for (const by of ['stream', 'container', 'hauler', 'facility']) {
       const { groups } = await get<Totals>(`/books/totals?year=2025&by=${by}&unit=L`)
