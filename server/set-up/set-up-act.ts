@@ -44,7 +44,6 @@ export type SetUpKind<T extends SetUpTable, Body> = {
     row: Row<T>,
     what: 'create' | 'change' | 'retire' | 'restore',
     body?: Body,
-    before?: Row<T>,
   ) => Promise<void>
   /** Of what the trail does not keep: is this what the record was made with? */
   isMadeWith?: (row: Row<T>, body: Body) => Promise<boolean>
@@ -173,7 +172,7 @@ async function follow<T extends SetUpTable, Body>(
   body?: Body,
   before?: Row<T>,
 ): Promise<void> {
-  await kind.after?.(tx, context, row, what, body, before)
+  await kind.after?.(tx, context, row, what, body)
   await writeAudit(tx, context, {
     act: kind.act,
     subjectKind: kind.subjectKind,

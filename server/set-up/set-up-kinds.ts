@@ -191,11 +191,8 @@ export const containerKind: SetUpKind<typeof containers, ContainerBody> = {
       throw inUse('It is not empty in the book. Ship or transfer what is in it first.')
     }
   },
-  after: async (tx, context, container, _what, _body, before) => {
-    // An empty container that moves takes its capacity away from where it stood.
-    const siteIds = new Set([before?.siteId ?? container.siteId, container.siteId])
-    for (const siteId of siteIds) await evaluateSiteLimits(tx, context, siteId)
-  },
+  // Only a container that never held anything moves, and that counts at no site yet.
+  after: async (tx, context, container) => evaluateSiteLimits(tx, context, container.siteId),
 }
 
 export function partyKind(kind: 'hauler' | 'facility'): SetUpKind<typeof parties, PartyBody> {
