@@ -12,14 +12,16 @@ export function whyUnfit(
 ): UnfitReason | undefined {
   if (container.hold !== null) return 'held'
   if (wanted.streamId !== '' && container.streamId !== wanted.streamId) return 'other-stream'
-  if (container.onPickup !== null) return 'on-pickup'
+  // A plan has no number yet and may still change; an issued manifest states what is in it.
+  if (container.onPickup !== null && container.onPickup.number !== null) return 'on-pickup'
   const fits = isPositive(container.roomLitres) && compare(container.roomLitres, wanted.litres) >= 0
   return fits ? undefined : 'not-enough-room'
 }
 
 /**
  * Containers for fluid of this site in the order to offer them: those that fit, the one with the smallest sufficient
- * room first so that a part-filled drum is finished before a new one is begun; then the others with the reason.
+ * room first so that a part-filled drum is finished before a new one is begun, a van's pails after what stands in the
+ * yard; then the others with the reason.
  */
 export function rankContainers(
   containers: readonly Container[],
@@ -38,6 +40,8 @@ export function rankContainers(
     .sort((a, b) => {
       const byReason = order.indexOf(a.unfit) - order.indexOf(b.unfit)
       if (byReason !== 0) return byReason
+      const byPlace = Number(a.container.type === 'van') - Number(b.container.type === 'van')
+      if (byPlace !== 0) return byPlace
       const byRoom = compare(a.container.roomLitres, b.container.roomLitres)
       // Among those that cannot take it all, the one with most room is nearest to enough.
       return a.unfit === undefined ? byRoom : -byRoom
