@@ -231,6 +231,7 @@ describe('a rule', () => {
     const stale = await yard.officer.post(`/rules/${bulk.id}/switch`, { ...off, enabled: true })
     expect(stale).toMatchObject({ status: 409, body: { code: 'changed-under-you' } })
     const on = { enabled: true, reason: 'One does after all', version: 2 }
+    product.clock.now = new Date('2025-03-10T18:01:00Z')
     expect((await yard.officer.post(`/rules/${bulk.id}/switch`, on)).status).toBe(200)
     expect((await flagsOf(yard, bulk)).map(({ state }) => state)).toEqual(['withdrawn', 'open'])
   })
