@@ -9,6 +9,8 @@ import {
   unique,
   uuid,
 } from 'drizzle-orm/pg-core'
+import type { RuleDefinition } from '@/shared/rules/definition'
+import type { RuleFinding } from '@/shared/rules/finding'
 import { instant, organisationId } from './columns'
 import { sites } from './sites'
 
@@ -22,7 +24,7 @@ export const rules = pgTable(
     origin: text('origin', { enum: ['pack', 'own'] }).notNull(),
     packRuleId: text('pack_rule_id'),
     /** RuleDefinition of shared/rules/definition.ts. */
-    definition: jsonb('definition').notNull(),
+    definition: jsonb('definition').$type<RuleDefinition>().notNull(),
     enabled: boolean('enabled').notNull(),
     version: integer('version').notNull(),
     changedAt: instant('changed_at').notNull(),
@@ -54,8 +56,8 @@ export const flags = pgTable(
     level: text('level', { enum: ['warn', 'limit'] }).notNull(),
     state: text('state', { enum: ['open', 'reviewed', 'withdrawn'] }).notNull(),
     /** Rule as it stood and the RuleFinding with its working; what the flag rests on. */
-    rule: jsonb('rule').notNull(),
-    finding: jsonb('finding').notNull(),
+    rule: jsonb('rule').$type<RuleDefinition>().notNull(),
+    finding: jsonb('finding').$type<RuleFinding>().notNull(),
     raisedAt: instant('raised_at').notNull(),
     changedAt: instant('changed_at').notNull(),
     /** When the measure fell below the warn line again: the crossing is over, its review may still wait. */

@@ -2,9 +2,9 @@ import { and, eq, isNull } from 'drizzle-orm'
 import type { Transaction } from '@/db/client'
 import { flags, rules } from '@/db/schema/limits'
 import { compare } from '@/shared/quantities/decimals'
-import { ruleDefinition, type RuleDefinition } from '@/shared/rules/definition'
+import type { RuleDefinition } from '@/shared/rules/definition'
 import { evaluateRule } from '@/shared/rules/evaluate-rule'
-import { ruleFinding, type RuleFinding } from '@/shared/rules/finding'
+import type { RuleFinding } from '@/shared/rules/finding'
 import type { ActContext } from '../act-context'
 import { gatherSiteFacts } from './site-facts'
 
@@ -27,7 +27,7 @@ export async function evaluateSiteLimits(
     .from(rules)
     .where(and(eq(rules.siteId, siteId), eq(rules.enabled, true), isNull(rules.retiredAt)))
   if (enabled.length === 0) return
-  const read = enabled.map((row) => ({ row, definition: ruleDefinition.parse(row.definition) }))
+  const read = enabled.map((row) => ({ row, definition: row.definition }))
   const facts = await gatherSiteFacts(
     tx,
     siteId,
@@ -71,7 +71,7 @@ async function keepFlag(
     await endCrossing(tx, context, flag)
     return
   }
-  const current = ruleFinding.parse(flag.finding)
+  const current = flag.finding
   const isHigher = compare(finding.measured, current.measured) > 0
   const isWorse = flag.level === 'warn' && finding.level === 'limit'
   if (!isHigher && !isWorse) return

@@ -7,9 +7,7 @@ import { flags, rules } from '@/db/schema/limits'
 import { people } from '@/db/schema/organisations'
 import { sites } from '@/db/schema/sites'
 import type { flag, rule } from '@/shared/contracts/limits'
-import { ruleDefinition } from '@/shared/rules/definition'
 import { evaluateRule } from '@/shared/rules/evaluate-rule'
-import { ruleFinding } from '@/shared/rules/finding'
 import { gatherSiteFacts } from './site-facts'
 
 /** Rules of a site with what each measures now, switched on or not. */
@@ -27,7 +25,7 @@ export async function presentRules(
     .orderBy(sql`${rules.origin} = 'pack'`, rules.packRuleId, rules.id)
   const read = rows.map((row) => ({
     ...row,
-    definition: ruleDefinition.parse(row.rule.definition),
+    definition: row.rule.definition,
   }))
   const facts = await gatherSiteFacts(
     tx,
@@ -86,8 +84,6 @@ export function presentFlag(
   return {
     ...row,
     siteCode: found.siteCode,
-    rule: ruleDefinition.parse(row.rule),
-    finding: ruleFinding.parse(row.finding),
     raisedAt: row.raisedAt.toISOString(),
     changedAt: row.changedAt.toISOString(),
     endedAt: row.endedAt?.toISOString() ?? null,

@@ -1,7 +1,6 @@
 import { and, eq } from 'drizzle-orm'
 import type { Transaction } from '@/db/client'
 import { flags } from '@/db/schema/limits'
-import { ruleDefinition } from '@/shared/rules/definition'
 import { demand, type ActContext } from '../act-context'
 import { writeAudit } from '../audit/write-audit'
 import { problem } from '../problem'
@@ -32,6 +31,6 @@ export async function reviewFlag(
     subjectKind: 'flag',
     subjectId: id,
     siteId: before.siteId,
-    details: { rule: ruleDefinition.parse(before.rule).title, note },
+    details: { rule: before.rule.title, note },
   })
 }
