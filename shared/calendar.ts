@@ -1,5 +1,9 @@
 import { TZDate, tzOffset } from '@date-fns/tz'
-import { addDays as addDaysTo, differenceInCalendarDays, format, parseISO } from 'date-fns'
+// By the file: the package's index brings all of it into the web app.
+import { addDays as addDaysTo } from 'date-fns/addDays'
+import { differenceInCalendarDays } from 'date-fns/differenceInCalendarDays'
+import { format } from 'date-fns/format'
+import { parseISO } from 'date-fns/parseISO'
 
 /** Local days and times of a site. Days are strings, YYYY-MM-DD; instants are Dates or ISO strings. */
 
