@@ -9,7 +9,7 @@ import { Card } from '../ui/card'
 import { Heading } from '../ui/heading'
 import { LinkText } from '../ui/link-text'
 import { Text } from '../ui/text'
-import { FactList, type Fact } from './fact-list'
+import { FactList, type Fact } from '../ui/fact-list'
 import { machineOf, volumeOf } from './drain-summary'
 
 /** What was drained, as typed; the exact litres beside it. */

@@ -1,85 +1,75 @@
-import { useState } from 'react'
 import { useTranslation } from 'react-i18next'
-import { issuePickup, readPickup } from '@/shared/contracts/pickups'
-import { formatTyped } from '@/shared/quantities/format'
-import { call } from '../api/call'
+import { readPickup, type Pickup } from '@/shared/contracts/pickups'
+import { AsOf } from '../api/as-of'
 import { CouldNotLoad } from '../api/could-not-load'
-import { openDocument } from '../api/download'
-import { useShowProblem } from '../api/show-problem'
 import { useContract } from '../api/use-contract'
 import { useSession } from '../session/use-session'
-import { Button } from '../ui/button'
+import { Row } from '../ui/card'
+import { LinkText } from '../ui/link-text'
 import { Loading } from '../ui/loading'
-import { Notice } from '../ui/notice'
 import { Screen } from '../ui/screen'
-import { Status } from '../ui/status'
-import { Table } from '../ui/table'
-import { stageKinds } from './pickups-screen'
+import { IssueCard } from './issue-card'
+import { PickupFacts } from './pickup-facts'
+import { PickupHistory } from './pickup-history'
+import { PickupLines } from './pickup-lines'
+import { PickupPapers } from './pickup-papers'
+import { ReceiveCard } from './receive-card'
+import { SettleCard } from './settle-card'
+import { SignCard } from './sign-card'
+import { StageStatus } from './stage-status'
+import { VoidPickup } from './void-pickup'
 
-/** One pickup: its lines, what issue waits for, and its papers. */
+/** One pickup from plan to settled: what it is, and the one next step. */
 export function PickupScreen({ id }: { id: string }) {
   const { t } = useTranslation()
-  const { can } = useSession()
-  const showProblem = useShowProblem('pickups')
   const reply = useContract(readPickup, { params: { id } })
-  const [refusal, setRefusal] = useState<{ title: string; detail: string } | null>(null)
   const { data } = reply
-  const issue = async () => {
-    if (data === undefined) return
-    try {
-      await call(issuePickup, { params: { id: data.id }, body: { version: data.version } })
-      await reply.refresh()
-    } catch (error) {
-      setRefusal(showProblem(error))
-    }
-  }
   return (
-    <Screen title={data?.number ?? t('pickups.one')}>
-      {data === undefined && (reply.error ? <CouldNotLoad reply={reply} /> : <Loading />)}
-      {refusal !== null && (
-        <Notice kind="stop" title={refusal.title}>
-          {refusal.detail}
-        </Notice>
-      )}
+    <Screen
+      title={data?.number ?? t('pickups.one')}
+      before={<LinkText href="/pickups">{t('pickups.all')}</LinkText>}
+      actions={data !== undefined && <VoidPickup pickup={data} />}
+    >
+      <AsOf reply={reply} />
+      {data === undefined &&
+        (reply.error === undefined ? <Loading /> : <CouldNotLoad reply={reply} />)}
       {data !== undefined && (
         <>
-          <Status
-            kind={stageKinds[data.stage] ?? 'note'}
-            label={t(`pickups.stages.${data.stage}`)}
-          />
-          <Table
-            caption={t('pickups.lines')}
-            columns={[
-              { key: 'container', label: t('pickups.columns.container') },
-              { key: 'stream', label: t('pickups.columns.stream') },
-              { key: 'shipped', label: t('pickups.columns.shipped'), isFigure: true },
-              { key: 'received', label: t('pickups.columns.received'), isFigure: true },
-            ]}
-            rows={data.lines.map((line) => ({
-              key: line.id,
-              cells: [
-                line.containerCode,
-                line.stream.name,
-                formatTyped(line.shipped.value, line.shipped.unit),
-                line.received === null
-                  ? '–'
-                  : formatTyped(line.received.quantity.value, line.received.quantity.unit),
-              ],
-            }))}
-          />
-          {data.stage === 'planned' && can('issue-pickup', { siteId: data.siteId }) && (
-            <Button kind="primary" label={t('pickups.issue')} onPress={() => void issue()} />
-          )}
-          {data.documents.map((document) => (
-            <Button
-              key={document.id}
-              icon="print"
-              label={t('pickups.open', { revision: document.revision })}
-              onPress={() => void openDocument(document.id)}
-            />
-          ))}
+          <Row>
+            <StageStatus stage={data.stage} />
+          </Row>
+          <PickupFacts pickup={data} />
+          <PickupLines pickup={data} />
+          <NextStep pickup={data} />
+          <PickupPapers pickup={data} />
+          <PickupHistory pickup={data} />
         </>
       )}
     </Screen>
   )
+}
+
+/** The step that comes next, for those who may take it. */
+function NextStep({ pickup }: { pickup: Pickup }) {
+  const { can } = useSession()
+  const may = (act: Parameters<typeof can>[0]) => can(act, { siteId: pickup.siteId })
+  switch (pickup.stage) {
+    case 'planned':
+      return may('issue-pickup') ? <IssueCard pickup={pickup} /> : null
+    case 'ready':
+    case 'at-the-gate':
+      return may('sign-pickup') ? <SignCard key={pickup.version} pickup={pickup} /> : null
+    case 'signed-out':
+    case 'return-due':
+    case 'differs':
+      return may('receive-pickup') ? (
+        <>
+          <ReceiveCard key={`receive-${pickup.version}`} pickup={pickup} />
+          {pickup.received !== null && <SettleCard pickup={pickup} />}
+        </>
+      ) : null
+    case 'settled':
+    case 'voided':
+      return null
+  }
 }

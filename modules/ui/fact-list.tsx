@@ -1,6 +1,6 @@
 import type { ReactNode } from 'react'
-import { fonts } from '../ui/measures'
-import { useColours } from '../ui/theme'
+import { fonts } from './measures'
+import { useColours } from './theme'
 
 export type Fact = { name: string; value: ReactNode }
 
