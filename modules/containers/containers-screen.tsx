@@ -1,30 +1,64 @@
-import { View } from 'react-native'
+import { useLocalSearchParams, useRouter } from 'expo-router'
 import { useTranslation } from 'react-i18next'
 import { listContainers, type Container } from '@/shared/contracts/containers'
-import { formatFigure, formatLitresAs } from '@/shared/quantities/format'
-import type { VolumeUnit } from '@/shared/quantities/units'
+import { compare } from '@/shared/quantities/decimals'
+import { AsOf } from '../api/as-of'
 import { CouldNotLoad } from '../api/could-not-load'
 import { useContract } from '../api/use-contract'
+import { useCatalogue } from '../session/use-catalogue'
+import { useSession } from '../session/use-session'
 import { useSite } from '../session/site-provider'
-import { Card, Row } from '../ui/card'
-import { LevelPicture } from '../ui/level-picture'
+import { ChoiceChips } from '../ui/choice'
+import { Select } from '../ui/field'
 import { LinkText } from '../ui/link-text'
 import { EmptyState, Loading } from '../ui/loading'
 import { Screen } from '../ui/screen'
-import { Status } from '../ui/status'
-import { Text } from '../ui/text'
+import { Row } from '../ui/card'
+import { ContainerCard } from './container-card'
 
-/** Containers of the site by room and age, with their level. */
+/** Containers of the site by room or by age, of one stream or all; the choice is in the address. */
 export function ContainersScreen() {
   const { t } = useTranslation()
+  const router = useRouter()
+  const { stream = '', sort = 'room' } = useLocalSearchParams<{ stream?: string; sort?: string }>()
   const { site } = useSite()
-  const reply = useContract(listContainers, site ? { query: { siteId: site.id } } : null)
-  const rows = [...(reply.data?.rows ?? [])].sort(byRoom)
+  const { can } = useSession()
+  const { catalogue } = useCatalogue()
+  const reply = useContract(
+    listContainers,
+    site === undefined ? null : { query: { siteId: site.id } },
+  )
+  const rows = (reply.data?.rows ?? [])
+    .filter((container) => stream === '' || container.streamId === stream)
+    .sort(sort === 'age' ? byAge : byRoom)
   return (
     <Screen title={t('containers.title')}>
-      {reply.data === undefined && (reply.error ? <CouldNotLoad reply={reply} /> : <Loading />)}
+      <AsOf reply={reply} />
+      <Row space={16} align="flex-end">
+        <ChoiceChips
+          label={t('containers.sort')}
+          value={sort === 'age' ? 'age' : 'room'}
+          onChange={(value) => router.setParams({ sort: value })}
+          options={[
+            { value: 'room', label: t('containers.byRoom') },
+            { value: 'age', label: t('containers.byAge') },
+          ]}
+        />
+        <Select
+          label={t('containers.stream')}
+          placeholder={t('containers.everyStream')}
+          value={stream}
+          onChange={(value) => router.setParams({ stream: value })}
+          options={(catalogue?.streams ?? []).map(({ id, name }) => ({ value: id, label: name }))}
+        />
+      </Row>
+      {reply.data === undefined &&
+        (reply.error === undefined ? <Loading /> : <CouldNotLoad reply={reply} />)}
       {reply.data !== undefined && rows.length === 0 && (
-        <EmptyState title={t('containers.empty')} />
+        <EmptyState
+          title={t('containers.empty', { site: site?.name })}
+          action={can('change-set-up') && <LinkText href="/setup">{t('containers.add')}</LinkText>}
+        />
       )}
       {rows.map((container) => (
         <ContainerCard key={container.id} container={container} unit={site?.volumeUnit ?? 'L'} />
@@ -33,51 +67,13 @@ export function ContainersScreen() {
   )
 }
 
-/** Least room first; of equal room the oldest. */
+/** Least room first; solids, which have no line, behind. */
 function byRoom(a: Container, b: Container): number {
-  return Number(a.roomLitres) - Number(b.roomLitres) || (b.ageDays ?? 0) - (a.ageDays ?? 0)
+  const bySolid = Number(a.stream.kind === 'solid') - Number(b.stream.kind === 'solid')
+  return bySolid || compare(a.roomLitres, b.roomLitres)
 }
 
-export function ContainerCard({ container, unit }: { container: Container; unit: VolumeUnit }) {
-  const { t } = useTranslation()
-  const isFluid = container.stream.kind === 'fluid'
-  const words = isFluid
-    ? t('containers.holds', {
-        held: formatLitresAs(container.litres, unit),
-        room: formatLitresAs(container.roomLitres, unit),
-      })
-    : t('containers.holdsSolids', {
-        pieces: container.pieces,
-        mass: formatFigure(container.kilograms, 1),
-      })
-  return (
-    <Card role="group" label={container.code}>
-      <Row>
-        <LevelPicture
-          kind={container.type}
-          capacity={Number(container.capacityLitres)}
-          fillLine={Number(container.fillLineLitres)}
-          contents={Number(container.litres)}
-          label={`${container.code}: ${words}`}
-          height={84}
-        />
-        <View style={{ flex: 1, minWidth: 180 }}>
-          <LinkText href={`/containers/${container.code}`}>{container.code}</LinkText>
-          <Text>{container.stream.name}</Text>
-          <Text kind="figure">{words}</Text>
-          <Text kind="hint">
-            {container.ageDays === null
-              ? t('containers.standsEmpty')
-              : t('containers.age', { count: container.ageDays })}
-          </Text>
-        </View>
-        {container.hold !== null && <Status kind="stop" label={t('containers.held')} />}
-        {container.level === 'over' && <Status kind="stop" label={t('containers.over')} />}
-        {container.level === 'below-zero' && (
-          <Status kind="check" label={t('containers.belowZero')} />
-        )}
-        {container.level === 'near' && <Status kind="check" label={t('containers.near')} />}
-      </Row>
-    </Card>
-  )
+/** Longest filled first. */
+function byAge(a: Container, b: Container): number {
+  return (b.ageDays ?? -1) - (a.ageDays ?? -1)
 }

@@ -26,7 +26,7 @@ export function PickupPapers({ pickup }: { pickup: Pickup }) {
           />
           <Text kind="hint">{t('pickups.papers.pages', { count: document.pages })}</Text>
           <Text kind="hint" label={t('pickups.papers.hash', { hash: document.sha256 })}>
-            {`SHA-256 ${document.sha256.slice(0, 16)}…`}
+            {t('pickups.papers.hash', { hash: `${document.sha256.slice(0, 16)}…` })}
           </Text>
         </Row>
       ))}
