@@ -1,3 +1,3 @@
-import { BooksScreen } from '@/modules/books/books-screen'
+import { NewestYearScreen } from '@/modules/books/newest-year-screen'
 
-export default BooksScreen
+export default NewestYearScreen

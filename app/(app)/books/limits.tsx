@@ -1,3 +1,0 @@
-import { LimitsScreen } from '@/modules/limits/limits-screen'
-
-export default LimitsScreen

@@ -1,0 +1,3 @@
+import { RulesScreen } from '@/modules/limits/rules-screen'
+
+export default RulesScreen
