@@ -1,43 +1,29 @@
 import { useTranslation } from 'react-i18next'
-import { readCatalogue } from '@/shared/contracts/set-up'
-import { CouldNotLoad } from '../api/could-not-load'
-import { useContract } from '../api/use-contract'
-import { Loading } from '../ui/loading'
+import { useSession } from '../session/use-session'
+import { Card } from '../ui/card'
+import { LinkText } from '../ui/link-text'
 import { Screen } from '../ui/screen'
-import { Table } from '../ui/table'
+import { Text } from '../ui/text'
+import { kindNames, kindOf } from './kinds'
 
-/** What the company works with: sites, machines, haulers, facilities. */
+/** What the company works with; each kind is a list of its own. */
 export function SetupScreen() {
   const { t } = useTranslation()
-  const reply = useContract(readCatalogue, {})
-  const { data } = reply
-  const columns = [
-    { key: 'code', label: t('setup.code') },
-    { key: 'name', label: t('setup.name') },
-  ]
-  const table = (caption: string, rows: { id: string; code: string; name: string }[]) => (
-    <Table
-      caption={caption}
-      columns={columns}
-      rows={rows.map((row) => ({ key: row.id, cells: [row.code, row.name] }))}
-    />
-  )
-  const parties = (rows: { id: string; identificationNumber: string; name: string }[]) =>
-    rows.map((row) => ({ id: row.id, code: row.identificationNumber, name: row.name }))
+  const { can } = useSession()
+  const shown = kindNames.filter((name) => can(kindOf(name)?.read ?? 'read-set-up'))
   return (
-    <Screen title={t('setup.title')}>
-      {data === undefined && (reply.error ? <CouldNotLoad reply={reply} /> : <Loading />)}
-      {data !== undefined && (
-        <>
-          {table(t('setup.sites'), data.sites)}
-          {table(
-            t('setup.machines'),
-            data.machines.map(({ id, code, kind }) => ({ id, code, name: kind })),
-          )}
-          {table(t('setup.haulers'), parties(data.haulers))}
-          {table(t('setup.facilities'), parties(data.facilities))}
-        </>
-      )}
+    <Screen title={t('setup.title')} width="narrow">
+      <Text>{t('setup.intro')}</Text>
+      {shown.map((name) => (
+        <Card key={name}>
+          <LinkText href={`/setup/${name}`}>{t(`setup.kinds.${name}`)}</LinkText>
+          <Text kind="hint">{t(`setup.about.${name}`)}</Text>
+        </Card>
+      ))}
+      <Card>
+        <LinkText href="/books/limits/rules">{t('setup.kinds.rules')}</LinkText>
+        <Text kind="hint">{t('setup.about.rules')}</Text>
+      </Card>
     </Screen>
   )
 }
