@@ -34,7 +34,10 @@ export function Screen({
       role="main"
       id="main"
       style={{
-        flex: 1,
+        // Never shorter than what it holds, so that its padding clears the bar.
+        flexGrow: 1,
+        flexShrink: 0,
+        flexBasis: 'auto',
         width: '100%',
         maxWidth: { narrow: 680, usual: 1080, full: 1600 }[width],
         paddingHorizontal: side,
@@ -59,7 +62,9 @@ export function Screen({
           </Heading>
         </View>
         {actions !== undefined && (
-          <View style={{ flexDirection: 'row', flexWrap: 'wrap', gap: gap.small }}>{actions}</View>
+          <View style={{ flexDirection: 'row', flexWrap: 'wrap', gap: gap.small, flexShrink: 1 }}>
+            {actions}
+          </View>
         )}
       </View>
       {children}

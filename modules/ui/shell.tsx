@@ -63,7 +63,16 @@ export function Shell({
         <View role="banner" data-no-print>
           {top}
         </View>
-        <View style={{ flex: 1, paddingBottom: primary === undefined ? 72 : 150 }}>{children}</View>
+        <View
+          style={{
+            flexGrow: 1,
+            flexShrink: 0,
+            flexBasis: 'auto',
+            paddingBottom: primary === undefined ? 72 : 150,
+          }}
+        >
+          {children}
+        </View>
         <div
           className="no-print"
           style={{ position: 'fixed', left: 0, right: 0, bottom: 0, zIndex: 10 }}

@@ -26,6 +26,7 @@ export async function signInAs(
   return {
     ...opened,
     expectClean: async () => {
+      await page.getByRole('heading', { level: 1 }).waitFor()
       expect({ at: page.url(), found: await findViolations(page) }).toEqual({
         at: page.url(),
         found: [],
