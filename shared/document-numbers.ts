@@ -4,8 +4,8 @@ const alphabet = '0123456789ABCDEFGHIJKLMNOPQRSTUVWXYZ'
 const modulus = alphabet.length
 
 /**
- * Check character by ISO/IEC 7064, hybrid system MOD 37,36 (the one of pure systems with 36 characters that catches
- * every single wrong character and every swap of neighbours). Dashes do not count.
+ * Check character by ISO/IEC 7064, hybrid system MOD 37,36: one character of 0-9 A-Z that catches every single wrong
+ * character, and all swaps of unlike neighbours but one pair in 630 at any place. Dashes do not count.
  * @throws RangeError on a character outside 0-9 A-Z
  */
 export function checkCharacter(text: string): string {

@@ -77,7 +77,7 @@ export function Button({
       ref={ref}
       role="button"
       aria-label={hint === undefined ? label : `${label}, ${hint}`}
-      aria-disabled={isOff}
+      disabled={disabled}
       aria-busy={busy}
       aria-expanded={expanded}
       aria-controls={controls}

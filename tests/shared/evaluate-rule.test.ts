@@ -188,6 +188,19 @@ test('days count from the first filling, an empty container has none', () => {
   expect(only(rule, later)).toMatchObject({ measured: '91', level: 'limit' })
 })
 
+// 40 CFR 262.16(b): "accumulates hazardous waste on site for no more than 180 days".
+test('day 180 is not more than 180 days; day 181 is', () => {
+  const rule = ownRule({
+    measure: 'days-since-first-fill',
+    scope: 'container',
+    threshold: { value: '180', unit: 'days' },
+  })
+  const filled = container({ firstFilledOn: '2025-01-01' })
+  const onDay = (today: string) => only(rule, facts([filled], { today }))
+  expect(onDay('2025-06-30')).toMatchObject({ measured: '180', level: 'warn' })
+  expect(onDay('2025-07-01')).toMatchObject({ measured: '181', level: 'limit' })
+})
+
 test('gallons of a litre sum are exact: ten tenths of a gallon are one gallon', () => {
   const rule = ownRule({ threshold: { value: '1', unit: 'gal_us' } })
   const tenths = Array.from({ length: 10 }, () => container({ litres: '0.3785411784' }))
