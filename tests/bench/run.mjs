@@ -1,7 +1,7 @@
 import { spawnSync } from 'node:child_process'
 import { readdirSync } from 'node:fs'
 import { join } from 'node:path'
-import { installWhenNeeded } from '../../server/build.mjs'
+import { buildWebWhenNeeded, installWhenNeeded } from '../../server/build.mjs'
 import { root } from '../../server/source-digest.mjs'
 
 /**
@@ -11,7 +11,10 @@ import { root } from '../../server/source-digest.mjs'
 const [wanted = ''] = process.argv.slice(2)
 
 process.chdir(root)
-await installWhenNeeded((line) => process.stderr.write(`${line}\n`))
+const tell = (line) => process.stderr.write(`${line}\n`)
+await installWhenNeeded(tell)
+// Built of what is measured, not of what was built last.
+await buildWebWhenNeeded(tell)
 const benches = readdirSync(join(root, 'tests/bench')).filter(
   (name) => name.endsWith('.bench.ts') && name.includes(wanted),
 )

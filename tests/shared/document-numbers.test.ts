@@ -38,7 +38,7 @@ test.each(numbers)('no single wrong character makes %s another number', (number)
       ? []
       : [...alphabet].map((other) => number.slice(0, index) + other + number.slice(index + 1)),
   )
-  expect(wrongs.length).toBeGreaterThan(9 * alphabet.length)
+  expect(wrongs.length).toBeGreaterThanOrEqual(9 * alphabet.length)
   expect(missedOf(number, wrongs)).toEqual([])
 })
 

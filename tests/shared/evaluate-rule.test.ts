@@ -188,14 +188,9 @@ test('days count from the first filling, an empty container has none', () => {
   expect(only(rule, later)).toMatchObject({ measured: '91', level: 'limit' })
 })
 
-// 40 CFR 262.16(b): "accumulates hazardous waste on site for no more than 180 days".
-test('day 180 is not more than 180 days; day 181 is', () => {
-  const rule = ownRule({
-    measure: 'days-since-first-fill',
-    scope: 'container',
-    threshold: { value: '180', unit: 'days' },
-  })
-  const filled = container({ firstFilledOn: '2025-01-01' })
+test('40 CFR 262.16(b): day 180 is not more than 180 days; day 181 is', () => {
+  const rule = packRule('us-rcra-sqg-180d')
+  const filled = container({ firstFilledOn: '2025-01-01', ruleClasses: rule.streams.classes })
   const onDay = (today: string) => only(rule, facts([filled], { today }))
   expect(onDay('2025-06-30')).toMatchObject({ measured: '180', level: 'warn' })
   expect(onDay('2025-07-01')).toMatchObject({ measured: '181', level: 'limit' })
@@ -242,6 +237,20 @@ describe('the packs', () => {
       const words = `${rule.title} ${rule.consequence} ${rule.caution}`.toLowerCase()
       expect(words).not.toMatch(/\b(compliant|exempt|in compliance|non-?hazardous)\b/)
     }
+  })
+
+  // Thresholds and how they compare, as the named provision words them: "more than" is gt, "or more" is gte.
+  test.each([
+    ['us-spcc-agg-1320', 'gt', '1320', 'gal_us', '40 CFR 112.1(d)(2)(ii)'],
+    ['us-dot-bulk-119', 'gt', '119', 'gal_us', '49 CFR 171.8, 173.150(f)(2)'],
+    ['us-rcra-sqg-100', 'gt', '100', 'kg', '40 CFR 260.10, 262.13 Table 1'],
+    ['us-rcra-lqg-1000', 'gte', '1000', 'kg', '40 CFR 260.10, 262.13 Table 1'],
+    ['us-rcra-sqg-onsite-6000', 'gt', '6000', 'kg', '40 CFR 262.16(b)(1)'],
+    ['us-rcra-sqg-180d', 'gt', '180', 'days', '40 CFR 262.16(b)'],
+    ['us-rcra-lqg-90d', 'gt', '90', 'days', '40 CFR 262.17(a)'],
+    ['gb-eng-osr-200l', 'gt', '200', 'L', 'SI 2001/2954 reg 2(2)(c)'],
+  ])('%s is %s %s %s under %s', (id, comparison, value, unit, citation) => {
+    expect(packRule(id)).toMatchObject({ comparison, threshold: { value, unit }, citation })
   })
 
   test('name every rule once', () => {
