@@ -42,7 +42,6 @@ export function ErrorSummary({
               onClick={(event) => {
                 event.preventDefault()
                 const field = document.getElementById(fieldId)
-                field?.scrollIntoView({ block: 'center' })
                 field?.focus()
               }}
             >

@@ -34,7 +34,10 @@ export function fakeFetch(reply: (sent: Sent) => FakeReply | Promise<FakeReply>)
 export function problemReply(
   status: number,
   code: ProblemCode,
-  more: { fields?: { path: string; code: string; detail: string }[] } = {},
+  more: {
+    fields?: { path: string; code: string; detail: string }[]
+    facts?: Record<string, string>
+  } = {},
 ): FakeReply {
   return {
     status,
