@@ -7,6 +7,7 @@ import { Stack } from '../ui/card'
 import { FigureButton, Table } from '../ui/table'
 import { Text } from '../ui/text'
 import { linesHref, type BooksAddress } from './books-address'
+import { unitWords } from './figure-words'
 
 type Side = (typeof sides)[number]
 type Group = Pick<
@@ -26,8 +27,7 @@ export function GroupTable({
 }) {
   const { t } = useTranslation()
   const router = useRouter()
-  const unitWords =
-    group.unit === 'pieces' ? t('books.pieces') : t(`units.${group.unit}`, { count: 2 })
+  const unit = unitWords(t, group.unit)
   const shown = (figure: Figure) =>
     figure.shown === null ? '–' : formatFigure(figure.shown, group.decimals)
   const open = (figure: Figure, side: Side, month?: string) => {
@@ -39,7 +39,7 @@ export function GroupTable({
         label={t('books.open', {
           side: t(`books.sides.${side}`),
           when,
-          figure: `${shown(figure)} ${unitWords}`,
+          figure: `${shown(figure)} ${unit}`,
           count: figure.lineCount,
         })}
         onPress={() =>
@@ -100,7 +100,7 @@ export function GroupTable({
           out: shown(group.total.out),
           adjusted: shown(group.total.adjusted),
           closing: shown(group.closing),
-          unit: unitWords,
+          unit,
         })}
       </Text>
     </Stack>

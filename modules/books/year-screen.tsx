@@ -11,6 +11,7 @@ import { useContract } from '../api/use-contract'
 import { useSite } from '../session/site-provider'
 import { Button } from '../ui/button'
 import { Row } from '../ui/card'
+import { LinkText } from '../ui/link-text'
 import { EmptyState, Loading } from '../ui/loading'
 import { MonthBars } from '../ui/month-bars'
 import { Notice } from '../ui/notice'
@@ -20,6 +21,7 @@ import { Text } from '../ui/text'
 import { hrefOf, queryOf, readAddress, type BooksAddress, type BooksParams } from './books-address'
 import { BookCheckCard } from './book-check-card'
 import { BooksFilters } from './books-filters'
+import { nameOfGroup, unitWords } from './figure-words'
 import { GroupTable } from './group-table'
 import { useAct } from './use-act'
 
@@ -39,6 +41,7 @@ export function YearScreen({ params }: { params: BooksParams }) {
     <Screen
       title={t('books.yearTitle', { year: address.year })}
       width="full"
+      before={<LinkText href="/books/limits">{t('books.toLimits')}</LinkText>}
       actions={
         <>
           <Button
@@ -88,7 +91,11 @@ export function YearScreen({ params }: { params: BooksParams }) {
         <GroupTable
           address={address}
           group={data.allFluids}
-          caption={t('books.allFluids', { year: address.year })}
+          caption={t('books.caption', {
+            year: address.year,
+            name: t('books.everyFluid'),
+            unit: unitWords(t, data.allFluids.unit),
+          })}
         />
       )}
       {data?.groups.map((group) => (
@@ -115,11 +122,8 @@ function captionOf(
   year: number,
   group: Totals['groups'][number],
 ): string {
-  const name =
-    group.label === group.streamName || group.label === ''
-      ? group.streamName
-      : `${group.label}, ${group.streamName}`
-  const unit = group.unit === 'pieces' ? t('books.pieces') : t(`units.${group.unit}`, { count: 2 })
+  const name = nameOfGroup(t, group)
+  const unit = unitWords(t, group.unit)
   const parts = [
     t('books.caption', { year, name, unit }),
     ...(group.densityUsed === null ? [] : [t('books.density', { density: group.densityUsed })]),
