@@ -57,8 +57,8 @@ export function RecordField({
             key={option.value}
             label={option.label}
             checked={chosen.includes(option.value)}
+            disabled={isDisabled}
             onChange={(isChecked) => {
-              if (isDisabled) return
               onChange(
                 isChecked
                   ? [...chosen, option.value]
@@ -71,7 +71,15 @@ export function RecordField({
     )
   }
   if (input === 'lines')
-    return <TextArea {...shared} value={text} onChange={onChange} {...mostOf(field)} />
+    return (
+      <TextArea
+        {...shared}
+        {...mostOf(field)}
+        value={text}
+        disabled={isDisabled}
+        onChange={onChange}
+      />
+    )
   const isFigure = input === 'figure' || input === 'quantity'
   return (
     <Field
@@ -94,7 +102,8 @@ function mostOf({ most }: FieldSpec) {
   return most === undefined ? {} : { maxLength: most }
 }
 
-function optionsOf(
+/** What a select or a list of boxes offers. */
+export function optionsOf(
   t: ReturnType<typeof useTranslation>['t'],
   choices: Choices,
   catalogue: Catalogue,

@@ -17,7 +17,8 @@ import { Notice } from '../ui/notice'
 import { Text } from '../ui/text'
 import { bodyOf, fieldOfPath, valuesOf, type SetUpRecord, type Values } from './form-values'
 import type { Kind } from './kinds'
-import { RecordField } from './record-field'
+import { readAgain, looksTheSame } from './read-again'
+import { optionsOf, RecordField } from './record-field'
 
 /** The form of one record. Errors stand at their field and above; a record changed meanwhile is not overwritten. */
 export function RecordForm({
@@ -44,6 +45,10 @@ export function RecordForm({
   const [errors, setErrors] = useState<Record<string, string>>({})
   const [problem, setProblem] = useState<ShownProblem>()
   const [isBusy, setBusy] = useState(false)
+  // What the boxes were filled from: a save changes this version and no later one, even when the screen behind is
+  // fetched again meanwhile.
+  const [read, setRead] = useState(record)
+  const [clashes, setClashes] = useState<{ name: string; now: string | string[] }[]>()
   const isNew = record === undefined
   const mayChange = can(kind.change)
   const unit =
@@ -58,11 +63,16 @@ export function RecordForm({
     const wrong = judge(contract.body, body, (path, code) => fieldWords(t, 'setup', { path, code }))
     setErrors(wrong)
     setProblem(undefined)
+    setClashes(undefined)
     if (Object.keys(wrong).length > 0) return
     setBusy(true)
     try {
       if (isNew) await call(contract, { body })
-      else await call(contract, { params: { id: record.id }, body, ifMatch: record.version })
+      else {
+        const isAsRead = read === undefined || looksTheSame(kind, read, record)
+        const { version } = isAsRead ? record : read
+        await call(contract, { params: { id: record.id }, body, ifMatch: version })
+      }
       await refreshWhatChanged(kind.refreshes)
       announce(t('setup.saved'))
       router.replace(`/setup/${kind.name}` as Href)
@@ -79,12 +89,29 @@ export function RecordForm({
     }
   }
 
+  const readOnceMore = async () => {
+    if (record === undefined || read === undefined) return
+    setBusy(true)
+    try {
+      const now = (await call(kind.contracts.read, { params: { id: record.id } })) as SetUpRecord
+      const again = readAgain(kind, read, now, values)
+      setValues(again.values)
+      setClashes(again.clashes)
+      setRead(now)
+      setProblem(undefined)
+      await refreshWhatChanged(kind.refreshes)
+    } catch (error) {
+      setProblem(showProblem(error))
+    }
+    setBusy(false)
+  }
+
   return (
     <Stack>
       <ErrorSummary
         errors={Object.entries(errors).map(([name, message]) => ({
           fieldId: `field-${name}`,
-          message,
+          message: t('setup.errorOf', { label: t(`setup.labels.${name}`), message }),
         }))}
       />
       {problem !== undefined && (
@@ -93,9 +120,22 @@ export function RecordForm({
           {problem.code === 'changed-under-you' && (
             <Button
               label={t('setup.readAgain')}
-              onPress={() => void refreshWhatChanged(kind.refreshes)}
+              busy={isBusy}
+              onPress={() => void readOnceMore()}
             />
           )}
+        </Notice>
+      )}
+      {clashes !== undefined && (
+        <Notice kind="check" title={t('setup.readAgainDone')}>
+          {clashes.map((clash) => (
+            <Text key={clash.name}>
+              {t('setup.clash', {
+                label: t(`setup.labels.${clash.name}`),
+                now: wordsOf(t, kind, clash, catalogue),
+              })}
+            </Text>
+          ))}
         </Notice>
       )}
       {!mayChange && <Notice kind="note" title={t('setup.readOnly')} />}
@@ -124,6 +164,21 @@ export function RecordForm({
       )}
     </Stack>
   )
+}
+
+/** What stands in a field now, as the field itself would say it. */
+function wordsOf(
+  t: ReturnType<typeof useTranslation>['t'],
+  kind: Kind,
+  clash: { name: string; now: string | string[] },
+  catalogue: Catalogue,
+): string {
+  const choices = kind.fields.find(({ name }) => name === clash.name)?.choices
+  const options = choices === undefined ? [] : optionsOf(t, choices, catalogue)
+  const parts = [clash.now]
+    .flat()
+    .map((part) => options.find(({ value }) => value === part)?.label ?? part)
+  return parts.filter((part) => part !== '').join(', ') || '–'
 }
 
 function usualOf(siteId: string, catalogue: Catalogue): Values {

@@ -102,11 +102,13 @@ export function Checkbox({
   checked,
   onChange,
   id,
+  disabled = false,
 }: {
   label: string
   checked: boolean
   onChange: (checked: boolean) => void
   id?: string
+  disabled?: boolean
 }) {
   const colours = useColours()
   const height = useTargetHeight()
@@ -120,13 +122,14 @@ export function Checkbox({
         color: colours.ink,
         fontFamily: fonts.text,
         fontSize: 17,
-        cursor: 'pointer',
+        cursor: disabled ? 'default' : 'pointer',
       }}
     >
       <input
         id={id}
         type="checkbox"
         checked={checked}
+        disabled={disabled}
         onChange={(event) => onChange(event.target.checked)}
         style={{ width: 24, height: 24, margin: 0, flexShrink: 0, accentColor: colours.act }}
       />

@@ -107,6 +107,7 @@ export function TextArea(
     name?: string
     rows?: number
     maxLength?: number
+    disabled?: boolean
   },
 ) {
   const ids = useLabelIds(props.id)
@@ -118,6 +119,7 @@ export function TextArea(
         name={props.name}
         rows={props.rows ?? 3}
         maxLength={props.maxLength}
+        disabled={props.disabled}
         value={props.value}
         onChange={(event) => props.onChange(event.target.value)}
         aria-invalid={props.error !== undefined}
