@@ -19,6 +19,7 @@ import { Button } from '../ui/button'
 import { Row } from '../ui/card'
 import { Checkbox, ChoiceChips } from '../ui/choice'
 import { Dialog } from '../ui/dialog'
+import { ErrorSummary } from '../ui/error-summary'
 import { Field, Select } from '../ui/field'
 import { Notice } from '../ui/notice'
 import { Text } from '../ui/text'
@@ -69,7 +70,7 @@ export function OwnRuleForm({
   const units = unitsOf[values.measure]
 
   const save = async () => {
-    const parsed = ownRuleBody.safeParse(bodyOf(values))
+    const parsed = ownRuleBody.safeParse(bodyOf(values, rule))
     const wrong: Record<string, string> = {}
     if (!parsed.success) {
       for (const issue of parsed.error.issues) {
@@ -122,12 +123,25 @@ export function OwnRuleForm({
         </>
       }
     >
+      <ErrorSummary
+        errors={Object.entries(errors).map(([path, message]) => {
+          const field = path.split('.')[0] ?? path
+          return {
+            fieldId: `rule-${field}`,
+            message: t('limits.form.errorOf', {
+              label: t(field === 'reason' ? 'limits.rules.reason' : `limits.form.${field}`),
+              message,
+            }),
+          }
+        })}
+      />
       <Field
         label={t('limits.form.title')}
         maxLength={160}
         value={values.title}
         onChange={(title) => change({ title })}
         error={errors['title']}
+        id="rule-title"
       />
       <Select
         label={t('limits.form.measure')}
@@ -185,6 +199,7 @@ export function OwnRuleForm({
           value={values.value}
           onChange={(value) => change({ value })}
           error={errors['threshold.value'] ?? errors['threshold.unit']}
+          id="rule-threshold"
         />
         <Select
           label={t('limits.form.unit')}
@@ -201,6 +216,7 @@ export function OwnRuleForm({
         value={values.warnPercent}
         onChange={(warnPercent) => change({ warnPercent })}
         error={errors['warnPercent']}
+        id="rule-warnPercent"
       />
       <Field
         label={t('limits.form.citation')}
@@ -209,6 +225,7 @@ export function OwnRuleForm({
         value={values.citation}
         onChange={(citation) => change({ citation })}
         error={errors['citation']}
+        id="rule-citation"
       />
       <Field
         label={t('limits.form.consequence')}
@@ -216,6 +233,7 @@ export function OwnRuleForm({
         value={values.consequence}
         onChange={(consequence) => change({ consequence })}
         error={errors['consequence']}
+        id="rule-consequence"
       />
       {rule !== undefined && (
         <Field
@@ -224,6 +242,7 @@ export function OwnRuleForm({
           value={values.reason}
           onChange={(reason) => change({ reason })}
           error={errors['reason']}
+          id="rule-reason"
         />
       )}
       {problem !== undefined && (
@@ -252,16 +271,17 @@ function valuesOf(rule: Rule | undefined, site: Site): Values {
   }
 }
 
-function bodyOf(values: Values) {
+/** What this form does not show of a rule stays as it was. */
+function bodyOf(values: Values, rule: Rule | undefined) {
   return {
     title: values.title,
     measure: values.measure,
     scope: values.scope,
-    streams: { classes: [], streamIds: values.streamIds },
+    streams: { classes: rule?.definition.streams.classes ?? [], streamIds: values.streamIds },
     threshold: { value: values.value.trim(), unit: values.unit },
     comparison: values.comparison,
     warnPercent: values.warnPercent.trim(),
-    minimumCapacity: null,
+    minimumCapacity: rule?.definition.minimumCapacity ?? null,
     consequence: values.consequence,
     citation: values.citation,
   }

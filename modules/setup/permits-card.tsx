@@ -15,6 +15,7 @@ import { Heading } from '../ui/heading'
 import { Notice } from '../ui/notice'
 import { Status } from '../ui/status'
 import { Text } from '../ui/text'
+import { expiryOf } from './expiry'
 import type { SetUpRecord } from './form-values'
 import type { Kind } from './kinds'
 
@@ -87,8 +88,11 @@ export function PermitsCard({ kind, record }: { kind: Kind; record: SetUpRecord 
               to: formatDay(permit.endsOn),
             })}
           </Text>
-          {permit.retiredAt === null && permit.endsOn < today && (
-            <Status kind="stop" label={t('setup.permits.expired')} />
+          {permit.retiredAt === null && expiryOf(permit.endsOn, today).kind !== 'note' && (
+            <Status
+              kind={expiryOf(permit.endsOn, today).kind}
+              label={t(expiryOf(permit.endsOn, today).words, { day: formatDay(permit.endsOn) })}
+            />
           )}
           {permit.retiredAt === null && mayChange && (
             <Button

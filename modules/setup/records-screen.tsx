@@ -16,6 +16,7 @@ import { Screen } from '../ui/screen'
 import { Status } from '../ui/status'
 import { Table } from '../ui/table'
 import type { SetUpRecord } from './form-values'
+import { expiryOf } from './expiry'
 import { kindOf, type Kind } from './kinds'
 
 /** All records of one kind. Retired ones are behind a switch: they are never deleted. */
@@ -126,10 +127,8 @@ function StateOf({ record }: { record: SetUpRecord }) {
       {record.retiredAt !== null && <Status kind="voided" label={t('setup.retired')} />}
       {last !== undefined && (
         <Status
-          kind={last < today ? 'stop' : 'note'}
-          label={t(last < today ? 'setup.permits.ended' : 'setup.permits.until', {
-            day: formatDay(last),
-          })}
+          kind={expiryOf(last, today).kind}
+          label={t(expiryOf(last, today).words, { day: formatDay(last) })}
         />
       )}
     </Row>
