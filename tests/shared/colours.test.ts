@@ -29,12 +29,18 @@ describe.each(Object.entries(themes) as [string, Colours][])('%s', (_, colours) 
   test('states and acts are readable on their own ground', () => {
     for (const status of statuses) {
       const { text, bg, edge }: StatusColours = colours[status]
-      expect(contrast(text, bg)).toBeGreaterThanOrEqual(4.5)
+      for (const ground of [bg, colours.sheet, colours.yard]) {
+        expect(contrast(text, ground)).toBeGreaterThanOrEqual(4.5)
+      }
+      expect(contrast(colours.ink, bg)).toBeGreaterThanOrEqual(7)
       expect(contrast(edge, colours.sheet)).toBeGreaterThanOrEqual(3)
     }
     expect(contrast(colours.onAct, colours.act)).toBeGreaterThanOrEqual(7)
     expect(contrast(colours.onAct, colours.actPressed)).toBeGreaterThanOrEqual(4.5)
     expect(contrast(colours.ink, colours.actWash)).toBeGreaterThanOrEqual(7)
+    for (const ink of ['inkSoft', 'act', 'link'] as const) {
+      expect(contrast(colours[ink], colours.actWash)).toBeGreaterThanOrEqual(4.5)
+    }
     expect(contrast(colours.fluid, colours.sheet)).toBeGreaterThanOrEqual(3)
   })
 })
