@@ -49,7 +49,7 @@ test('a technician logs a drain on a phone, finds it in the list and amends it',
   // It is in the list, and the container's level has risen.
   await page.goto('/containers/C-101')
   await page
-    .getByText(/246\.\d\sgal in it/)
+    .getByText(/246\.\d\sgal of/)
     .first()
     .waitFor()
   await page.goto('/drains')
