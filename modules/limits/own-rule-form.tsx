@@ -1,4 +1,4 @@
-import { useState } from 'react'
+import { useMemo, useState } from 'react'
 import { useTranslation } from 'react-i18next'
 import { changeRule, createRule, ownRuleBody, type Rule } from '@/shared/contracts/limits'
 import type { Site } from '@/shared/contracts/set-up'
@@ -66,6 +66,18 @@ export function OwnRuleForm({
   const [errors, setErrors] = useState<Record<string, string>>({})
   const [isBusy, setBusy] = useState(false)
   const [problem, setProblem] = useState<ShownProblem>()
+  const summary = useMemo(
+    () =>
+      Object.entries(errors).map(([path, message]) => {
+        const field = path.split('.')[0] ?? path
+        const label = t(field === 'reason' ? 'limits.rules.reason' : `limits.form.${field}`)
+        return {
+          fieldId: `rule-${field}`,
+          message: t('limits.form.errorOf', { label, message }),
+        }
+      }),
+    [errors, t],
+  )
   const change = (more: Partial<Values>) => setValues((old) => ({ ...old, ...more }))
   const units = unitsOf[values.measure]
 
@@ -123,18 +135,7 @@ export function OwnRuleForm({
         </>
       }
     >
-      <ErrorSummary
-        errors={Object.entries(errors).map(([path, message]) => {
-          const field = path.split('.')[0] ?? path
-          return {
-            fieldId: `rule-${field}`,
-            message: t('limits.form.errorOf', {
-              label: t(field === 'reason' ? 'limits.rules.reason' : `limits.form.${field}`),
-              message,
-            }),
-          }
-        })}
-      />
+      <ErrorSummary errors={summary} />
       <Field
         label={t('limits.form.title')}
         maxLength={160}

@@ -1,5 +1,5 @@
 import { useRouter, type Href } from 'expo-router'
-import { useState } from 'react'
+import { useMemo, useState } from 'react'
 import { useTranslation } from 'react-i18next'
 import { type z } from 'zod'
 import type { Catalogue } from '@/shared/contracts/set-up'
@@ -49,6 +49,14 @@ export function RecordForm({
   // fetched again meanwhile.
   const [read, setRead] = useState(record)
   const [clashes, setClashes] = useState<{ name: string; now: string | string[] }[]>()
+  const summary = useMemo(
+    () =>
+      Object.entries(errors).map(([name, message]) => ({
+        fieldId: `field-${name}`,
+        message: t('setup.errorOf', { label: t(`setup.labels.${name}`), message }),
+      })),
+    [errors, t],
+  )
   const isNew = record === undefined
   const mayChange = can(kind.change)
   const unit =
@@ -108,12 +116,7 @@ export function RecordForm({
 
   return (
     <Stack>
-      <ErrorSummary
-        errors={Object.entries(errors).map(([name, message]) => ({
-          fieldId: `field-${name}`,
-          message: t('setup.errorOf', { label: t(`setup.labels.${name}`), message }),
-        }))}
-      />
+      <ErrorSummary errors={summary} />
       {problem !== undefined && (
         <Notice kind="stop" title={problem.title}>
           <Text>{problem.detail}</Text>

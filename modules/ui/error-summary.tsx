@@ -5,7 +5,10 @@ import { gap } from './measures'
 import { Heading } from './heading'
 import { useColours } from './theme'
 
-/** At the top of a long form after a refusal: takes the focus and leads to each field. The same words as in place. */
+/**
+ * At the top of a long form after a refusal: takes the focus and leads to each field.
+ * @param errors the same list until the next refusal: a new one takes the focus from whoever is mending the first
+ */
 export function ErrorSummary({
   errors,
 }: {
