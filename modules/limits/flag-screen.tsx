@@ -21,7 +21,7 @@ import { Notice } from '../ui/notice'
 import { Screen } from '../ui/screen'
 import { Table } from '../ui/table'
 import { Text } from '../ui/text'
-import { FlagStatus, measuredWords } from './flag-words'
+import { FlagStatus, measuredWords, reviewWords } from './flag-words'
 
 /** One flag with the working behind it, and its review. */
 export function FlagScreen({ id }: { id: string }) {
@@ -70,7 +70,7 @@ function FlagFacts({ flag }: { flag: Flag }) {
           { name: t('limits.facts.measured'), value: measuredWords(t, flag.finding) },
           {
             name: t('limits.facts.review'),
-            value: t('limits.review', { citation: flag.rule.citation }),
+            value: reviewWords(t, flag.rule.citation),
           },
           { name: t('limits.facts.consequence'), value: flag.rule.consequence || '–' },
           { name: t('limits.facts.raised'), value: at(flag.raisedAt) },

@@ -31,3 +31,8 @@ export function measuredWords(t: Translate, finding: RuleFinding): string {
     unit,
   })
 }
+
+/** `For review under 40 CFR 279.22`; an own rule need not name where it is written. */
+export function reviewWords(t: Translate, citation: string): string {
+  return citation === '' ? t('limits.reviewOwn') : t('limits.review', { citation })
+}

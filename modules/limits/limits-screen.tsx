@@ -12,7 +12,7 @@ import { LinkText } from '../ui/link-text'
 import { EmptyState, Loading } from '../ui/loading'
 import { Screen } from '../ui/screen'
 import { Text } from '../ui/text'
-import { FlagStatus, measuredWords } from './flag-words'
+import { FlagStatus, measuredWords, reviewWords } from './flag-words'
 
 const states = ['open', 'reviewed', 'withdrawn'] as const
 
@@ -71,7 +71,7 @@ function FlagCard({ flag }: { flag: Flag }) {
       <Text kind="hint">
         {t('limits.raised', {
           day: formatDay(localDay(flag.raisedAt, zone)),
-          citation: flag.rule.citation,
+          review: reviewWords(t, flag.rule.citation),
         })}
       </Text>
     </Card>

@@ -19,7 +19,7 @@ import { Notice } from '../ui/notice'
 import { Screen } from '../ui/screen'
 import { Status } from '../ui/status'
 import { Text } from '../ui/text'
-import { measuredWords } from './flag-words'
+import { measuredWords, reviewWords } from './flag-words'
 import { OwnRuleForm } from './own-rule-form'
 import { whatRulesChange } from './rule-refresh'
 
@@ -94,7 +94,7 @@ function RuleCard({
           {[finding.subject, measuredWords(t, finding)].filter(Boolean).join(': ')}
         </Text>
       ))}
-      <Text kind="hint">{t('limits.review', { citation: definition.citation })}</Text>
+      <Text kind="hint">{reviewWords(t, definition.citation)}</Text>
       {definition.caution !== '' && <Text kind="hint">{definition.caution}</Text>}
       {mayChange && (
         <Row>
